@@ -1,0 +1,1 @@
+//! The ship's own append-only record.

@@ -1,0 +1,45 @@
+//! One file a command; each sees only the public library.
+
+mod exit;
+mod output;
+
+use clap::{Parser, Subcommand};
+use exit::Exit;
+use std::process::ExitCode;
+
+/// Compass errors by the bearings of the sun, the moon, planets and stars.
+#[derive(Parser)]
+#[command(name = "shadowpin", version, max_term_width = 100, arg_required_else_help = true)]
+#[command(after_help = "A check on instruments, not a means of navigation, and not type-approved. The official almanac, the chart, \
+the adjuster's card, the makers' manuals, the limits of flag and company, and the master come first. \
+Never look at the sun without the azimuth circle's shades.")]
+struct Cli {
+    #[command(subcommand)]
+    command: Command,
+}
+
+#[derive(Subcommand)]
+enum Command {}
+
+/// Runs the command line and answers the exit code: 0 nothing to report, 1 queries, 2 could not run, 3 problem rows.
+pub fn main() -> ExitCode {
+    let cli = match Cli::try_parse() {
+        Ok(cli) => cli,
+        Err(help) => {
+            let _ = help.print();
+            return if help.use_stderr() { Exit::Error.into() } else { Exit::Clean.into() };
+        }
+    };
+    match run(cli.command) {
+        Ok(exit) => exit.into(),
+        Err(error) if output::is_closed_pipe(&error) => Exit::Clean.into(),
+        Err(error) => {
+            eprintln!("shadowpin: {error}");
+            Exit::Error.into()
+        }
+    }
+}
+
+fn run(command: Command) -> shadowpin::error::Result<Exit> {
+    match command {}
+}

@@ -1,0 +1,1 @@
+//! What an observer sees: altitude and azimuth, rising and setting.

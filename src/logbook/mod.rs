@@ -1,0 +1,1 @@
+//! The log: its columns and their reading.

@@ -1,0 +1,8 @@
+//! The command line of shadowpin: flags to meaning, meaning to the library, its answer to a writer.
+#![forbid(unsafe_code)]
+
+mod cli;
+
+fn main() -> std::process::ExitCode {
+    cli::main()
+}

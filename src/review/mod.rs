@@ -1,0 +1,1 @@
+//! What in a log needs an explanation.

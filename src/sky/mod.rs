@@ -1,0 +1,18 @@
+//! Where a body is, as seen from the centre of the earth.
+
+mod body;
+
+pub use body::{Body, Planet};
+
+/// The direction of a body's centre as seen from the centre of the earth: apparent place, true equator and equinox of date.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct ApparentPlace {
+    /// Greenwich hour angle, degrees, `0 <= x < 360`, westward.
+    pub gha_deg: f64,
+    /// Declination, degrees, north +.
+    pub declination_deg: f64,
+    /// Equatorial horizontal parallax, degrees; 0 for a star.
+    pub horizontal_parallax_deg: f64,
+    /// Apparent semidiameter, degrees; 0 for a star or a planet.
+    pub semidiameter_deg: f64,
+}

@@ -1,0 +1,9 @@
+//! Instants, ship's time, and the scales that the sky is computed in.
+
+mod instant;
+mod scales;
+mod zone;
+
+pub use instant::{FIRST_YEAR, LAST_YEAR, UtcInstant};
+pub use scales::{Tt, Ut1};
+pub use zone::Zone;

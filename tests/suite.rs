@@ -1,0 +1,4 @@
+//! The one test program: outside values, properties, bad logs, commands, layers.
+
+mod layers;
+mod published;
