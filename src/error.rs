@@ -62,10 +62,14 @@ pub enum NoAnswer {
         latitude_deg: f64,
     },
     /// The instant lies outside the years the formulas were checked for.
-    #[error("the year {year} is outside {}-{}, for which the formulas were checked", crate::time::FIRST_YEAR, crate::time::LAST_YEAR)]
+    #[error("the year {year} is outside {first}-{last}, for which the formulas were checked")]
     Year {
         /// Calendar year, UTC.
         year: i32,
+        /// First year answered.
+        first: i32,
+        /// Last year answered.
+        last: i32,
     },
     /// The field model does not reach that date.
     #[error("no field model for {year:.2}: the models span {from:.1} to {to:.1}")]

@@ -31,7 +31,7 @@ impl UtcInstant {
             Ok(Self { unix_ms })
         } else {
             let year = DateTime::from_timestamp_millis(unix_ms).map_or(if unix_ms < 0 { i32::MIN } else { i32::MAX }, |t| t.year());
-            Err(NoAnswer::Year { year })
+            Err(NoAnswer::Year { year, first: FIRST_YEAR, last: LAST_YEAR })
         }
     }
 
