@@ -127,10 +127,10 @@ mod tests {
         (gha, dec)
     }
 
-    /// At altitude 60 the azimuth moves two seconds of arc for one of the sun's place: 0.01 degrees allow 18", 0.02 allow 36".
+    /// The full ephemeris stops in the first day of 2100. At altitude 60 the azimuth moves two seconds of arc for one of the sun's place: 0.01 degrees allow 18", 0.02 allow 36".
     #[test]
     fn place_against_the_full_ephemeris() {
-        for (first, last, bound) in [(1950, 2050, 10.0), (1900, 1950, 10.0), (2050, 2100, 10.0)] {
+        for (first, last, bound) in [(1950, 2050, 10.0), (1900, 1950, 10.0), (2050, 2099, 10.0)] {
             let (gha, dec) = worst_arcsec(first, last);
             assert!(gha < bound && dec < bound, "{first}-{last}");
         }
