@@ -266,6 +266,43 @@ mod tests {
         assert!(matches!(nearest_event(sun::apparent_place, place, CENTRE, RisingOrSetting::Rising, first), Search::At(_)));
     }
 
+    /// What the sun's place at its worst (8" and 3" off, `sky::sun`) does to the instants of a whole year.
+    #[test]
+    fn the_place_is_worth_seconds() {
+        let off = |sign: f64| {
+            move |utc| {
+                let place = sun::apparent_place(utc);
+                ApparentPlace {
+                    gha_deg: wrap_360_deg(place.gha_deg + 8.0 / 3600.0),
+                    declination_deg: place.declination_deg + sign * 3.0 / 3600.0,
+                    ..place
+                }
+            }
+        };
+        for (lat, bound) in [(0.0, 1.0), (60.0, 2.0), (65.0, 6.0)] {
+            let mut worst = 0.0_f64;
+            for day in 0..365 {
+                let about = utc("2026-01-01T06:00:00").plus_seconds(f64::from(day) * 86_400.0).unwrap();
+                let find = |place: &dyn Fn(UtcInstant) -> ApparentPlace| match nearest_event(
+                    place,
+                    at(lat, 0.0),
+                    CENTRE,
+                    RisingOrSetting::Rising,
+                    about,
+                ) {
+                    Search::At(found) => found.utc,
+                    other => panic!("{other:?}"),
+                };
+                let right = find(&sun::apparent_place);
+                for sign in [-1.0, 1.0] {
+                    worst = worst.max(find(&off(sign)).seconds_since(right).abs());
+                }
+            }
+            println!("latitude {lat}: {worst:.2} s");
+            assert!(worst < bound);
+        }
+    }
+
     proptest! {
         #![proptest_config(ProptestConfig::with_cases(300))]
         /// Against every ten seconds of the day looked at, days that graze the horizon among them.

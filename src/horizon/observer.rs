@@ -33,10 +33,10 @@ pub struct Horizontal {
 /// # Example
 /// ```
 /// use shadowpin::{angle::Position, horizon::horizontal, sky::sun, time::UtcInstant};
-/// let utc = UtcInstant::from_unix_ms(1_782_043_200_000)?; // 2026-06-21 12:00 UTC
-/// let here = Position::from_deg(50.0, -20.0).ok_or("no such place")?;
+/// let utc = UtcInstant::from_unix_ms(1_216_526_772_000)?; // 2008-07-20 04:06:12 UTC
+/// let here = Position::from_deg(44.0 + 31.0 / 60.0, 69.7).ok_or("no such place")?;
 /// let seen = horizontal(&sun::apparent_place(utc), here)?;
-/// assert_eq!(format!("{:.1} {:.1}", seen.azimuth.deg(), seen.altitude_deg), "138.6 58.2");
+/// assert_eq!(format!("{:.1} {:.1}", seen.azimuth.deg(), seen.altitude_deg), "103.1 42.3");
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 pub fn horizontal(place: &ApparentPlace, position: Position) -> Result<Horizontal, NoAnswer> {
