@@ -1,4 +1,5 @@
 //! The one test program: outside values, properties, bad logs, commands, layers.
 
 mod layers;
+mod magnetic;
 mod published;
