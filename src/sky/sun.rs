@@ -116,6 +116,7 @@ mod tests {
         let ms =
             |year: i32| chrono::NaiveDate::from_ymd_opt(year, 1, 1).unwrap().and_time(chrono::NaiveTime::MIN).and_utc().timestamp_millis();
         let (from, to) = (ms(first_year), ms(last_year + 1));
+        // Hour angle as arc on the sky.
         let (mut gha, mut dec) = (0.0_f64, 0.0_f64);
         for i in 0..2000 {
             let utc = UtcInstant::from_unix_ms(from + (to - from - 1) / 2000 * i + i).unwrap();
@@ -128,7 +129,8 @@ mod tests {
         (gha, dec)
     }
 
-    /// The full ephemeris stops in the first day of 2100. At altitude 60 the azimuth moves two seconds of arc for one of the sun's place: 0.01 degrees allow 18", 0.02 allow 36".
+    /// The full ephemeris stops in the first day of 2100. At altitude 60 the azimuth moves two seconds of arc for one of the
+    /// sun's place: 0.01 degrees allow 18".
     #[test]
     fn place_against_the_full_ephemeris() {
         for (first, last, bound) in [(1950, 2050, 10.0), (1900, 1950, 10.0), (2050, 2099, 10.0)] {
