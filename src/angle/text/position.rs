@@ -139,7 +139,7 @@ fn coordinate(text: &str, expected: &'static str, axis: Axis) -> Result<(f64, f6
 
 /// Degrees, then minutes, then seconds, each with or without its mark.
 fn magnitude(mut rest: &[Token<'_>], refuse: impl Fn(&'static str) -> BadValue) -> Result<(f64, f64), BadValue> {
-    let (mut total, mut step, mut unit) = (0.0, 1.0, 1.0);
+    let (mut total, mut unit) = (0.0, 1.0);
     let mut last_decimals = 0;
     for place in 0..3 {
         let [Token::Number { value, decimals }, tail @ ..] = rest else {
@@ -152,7 +152,7 @@ fn magnitude(mut rest: &[Token<'_>], refuse: impl Fn(&'static str) -> BadValue) 
             return Err(refuse("minutes and seconds are under 60"));
         }
         total += value * unit;
-        step = decimal_step(*decimals) * unit;
+        let step = decimal_step(*decimals) * unit;
         last_decimals = *decimals;
         unit /= 60.0;
         let mark = [Token::Degree, Token::Minute, Token::Second][place];
