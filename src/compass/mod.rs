@@ -1,3 +1,4 @@
 //! Errors of the gyrocompass and the magnetic compass.
 
+pub mod curve;
 pub mod field;

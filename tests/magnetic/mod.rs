@@ -1,3 +1,4 @@
 //! The magnetic compass: field model, deviation curve, card and swing.
 
 mod field_model;
+mod swings;
