@@ -2,6 +2,9 @@
 
 mod exit;
 mod output;
+mod read;
+mod swing;
+mod variation;
 
 use clap::{Parser, Subcommand};
 use exit::Exit;
@@ -19,7 +22,12 @@ struct Cli {
 }
 
 #[derive(Subcommand)]
-enum Command {}
+enum Command {
+    /// A deviation curve from the deviations of a swing
+    Swing(swing::Args),
+    /// Variation and the earth's field at a place and date
+    Variation(variation::Args),
+}
 
 /// Runs the command line and answers the exit code: 0 nothing to report, 1 queries, 2 could not run, 3 problem rows.
 pub fn main() -> ExitCode {
@@ -41,5 +49,8 @@ pub fn main() -> ExitCode {
 }
 
 fn run(command: Command) -> shadowpin::error::Result<Exit> {
-    match command {}
+    match command {
+        Command::Swing(args) => swing::run(args),
+        Command::Variation(args) => variation::run(args),
+    }
 }

@@ -1,4 +1,5 @@
 //! Errors of the gyrocompass and the magnetic compass.
 
+pub mod card;
 pub mod curve;
 pub mod field;

@@ -1,1 +1,5 @@
 //! Results as rows and text.
+
+mod figure;
+pub mod swing;
+pub mod variation;

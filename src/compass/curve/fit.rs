@@ -54,6 +54,40 @@ pub struct SetAside {
     pub index: usize,
     /// Observed - curve through the others, degrees.
     pub residual_deg: f64,
+    /// A slip of the pen that would explain it.
+    pub slip: Option<ReadingSlip>,
+}
+
+/// What may have happened to a reading that does not belong.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum ReadingSlip {
+    /// East and west exchanged.
+    OtherName,
+    /// Ten degrees too far east.
+    TenTooFarEast,
+    /// Ten degrees too far west.
+    TenTooFarWest,
+}
+
+impl ReadingSlip {
+    /// How near the curve a reading must come when the slip is undone, degrees (our own: three sigma of a reading).
+    const NEAR_DEG: f64 = 1.5;
+
+    fn of(deviation_deg: f64, residual_deg: f64) -> Option<Self> {
+        let slips = [(Self::OtherName, 2.0 * deviation_deg), (Self::TenTooFarEast, 10.0), (Self::TenTooFarWest, -10.0)];
+        let left = slips.map(|(slip, shift)| (slip, (residual_deg - shift).abs()));
+        left.into_iter().filter(|(_, left)| *left <= Self::NEAR_DEG).min_by(|a, b| a.1.total_cmp(&b.1)).map(|(slip, _)| slip)
+    }
+}
+
+impl std::fmt::Display for ReadingSlip {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        f.write_str(match self {
+            Self::OtherName => "with the other name it would fit",
+            Self::TenTooFarEast => "ten degrees further west it would fit",
+            Self::TenTooFarWest => "ten degrees further east it would fit",
+        })
+    }
 }
 
 /// A deviation curve fitted to readings.
@@ -160,9 +194,12 @@ pub fn fit(readings: &[Reading]) -> Result<Curve, NoCurve> {
         curve.half_turn_difference_deg = u.is_finite().then_some((half, u));
     }
     let half = curve.half_turn_difference_deg.map_or(0.0, |(half, _)| half);
-    let residual = |r: &Reading| r.deviation.deg() - curve.value_deg(r.heading) - half * sense(r.turn);
+    let residual = |r: &Reading| r.deviation.deg() - curve.deviation_deg(r.heading) - half * sense(r.turn);
     curve.residuals_deg = readings.iter().map(residual).collect();
-    let with_residual = |index: usize| Some(SetAside { index, residual_deg: *curve.residuals_deg.get(index)? });
+    let with_residual = |index: usize| {
+        let residual_deg = *curve.residuals_deg.get(index)?;
+        Some(SetAside { index, residual_deg, slip: ReadingSlip::of(*deviations.get(index)?, residual_deg) })
+    };
     curve.set_aside = aside.iter().filter_map(|index| with_residual(*index)).collect();
     curve.notices = notices(&curve, largest(&aside), kept.len());
     Ok(curve)
@@ -194,10 +231,11 @@ impl Curve {
             _ => (self.solution.variance(&row(heading, 0.0, self.solution.values.len())), self.scatter_deg),
         };
         let u_deg = scatter * variance.sqrt();
-        (u_deg <= UNKNOWN_DEG).then(|| Estimate { deviation_deg: self.value_deg(heading), u_deg })
+        (u_deg <= UNKNOWN_DEG).then(|| Estimate { deviation_deg: self.deviation_deg(heading), u_deg })
     }
 
-    fn value_deg(&self, heading: CompassBearing) -> f64 {
+    /// The deviation on a heading by compass, degrees, east +, whether or not the headings observed can tell it: see [`Curve::on`].
+    pub fn deviation_deg(&self, heading: CompassBearing) -> f64 {
         match &self.exact {
             Some(exact) => exact.on_compass_heading(heading).deg(),
             None => self.coefficients.deviation_deg(heading),

@@ -12,7 +12,7 @@ mod student;
 
 pub use coefficients::Coefficients;
 pub use exact::ExactCoefficients;
-pub use fit::{Curve, Estimate, NoCurve, SetAside, fit};
+pub use fit::{Curve, Estimate, NoCurve, ReadingSlip, SetAside, fit};
 pub use handbook::eight_headings;
 
 use crate::angle::{CompassBearing, Deviation};
