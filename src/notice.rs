@@ -127,6 +127,8 @@ pub enum Notice {
     },
     /// The readings cannot tell what of B and C is permanent and what is induced (`latitude-untold`).
     LatitudeUntold,
+    /// Readings of one curve were taken at different magnetic latitudes (`latitudes-mixed`).
+    LatitudesMixed,
     /// The figures of a deviation card do not lie on a curve (`card-not-smooth`).
     CardNotSmooth {
         /// Largest residual, degrees.
@@ -190,6 +192,7 @@ impl Notice {
             Self::LargeDeviation { .. } => "large-deviation",
             Self::TurnsDiffer { .. } => "turns-differ",
             Self::LatitudeUntold => "latitude-untold",
+            Self::LatitudesMixed => "latitudes-mixed",
             Self::CardNotSmooth { .. } => "card-not-smooth",
             Self::CardConstant { .. } => "card-constant",
             Self::CardNearNil { .. } => "card-near-nil",
@@ -265,6 +268,9 @@ impl fmt::Display for Notice {
             ),
             Self::LatitudeUntold => {
                 write!(f, "the readings cannot tell permanent from induced magnetism: they need places of different magnetic latitude")
+            }
+            Self::LatitudesMixed => {
+                write!(f, "the readings come from different magnetic latitudes, where B and C differ: the curve is a mean of them")
             }
             Self::CardNotSmooth { residual_deg, heading_deg } => {
                 write!(f, "the card is not smooth: {:.1} off its own curve at {}", residual_deg.abs(), three_figures(heading_deg))

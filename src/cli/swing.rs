@@ -4,12 +4,13 @@ use super::exit::Exit;
 use super::output::{Format, OutputArgs};
 use super::read;
 use clap::ValueEnum;
+use shadowpin::angle::text::read_direction;
 use shadowpin::angle::{CompassBearing, Position};
 use shadowpin::compass::curve::latitude::{self, MagneticPlace};
 use shadowpin::compass::curve::{Curve, Reading, fit};
 use shadowpin::compass::field;
-use shadowpin::error::{BadValue, Error, Result};
-use shadowpin::logbook::swing::read_swing;
+use shadowpin::error::{Error, NoAnswer, Result};
+use shadowpin::logbook::swing::{SwingRow, read_swing};
 use shadowpin::report::swing::{Elsewhere, Particulars, SwingReport, headings, table_of};
 use shadowpin::time::UtcInstant;
 use std::path::PathBuf;
@@ -91,8 +92,9 @@ pub fn run(args: Args) -> Result<Exit> {
     let asked = args.heading.as_deref().map(heading).transpose()?;
     let (name, bytes) = read::content(&args.file)?;
     let swing = read_swing(&name, &bytes)?;
-    let only: Vec<Reading> = swing.readings.iter().map(|(_, reading)| *reading).collect();
-    let curve = fit(&only).map_err(|none| Error::Content { file: name, line: 0, message: none.to_string() })?;
+    let readings: Vec<Reading> = swing.rows.iter().map(|row| row.reading).collect();
+    let curve = fit(&readings).map_err(|none| Error::Content { file: name, line: 0, message: none.to_string() })?;
+    let places = places(&swing.rows, swung_at.zip(utc))?;
 
     let date = utc.map(|utc| utc.to_chrono().format("%Y-%m-%d").to_string()).unwrap_or_default();
     let particulars =
@@ -100,23 +102,19 @@ pub fn run(args: Args) -> Result<Exit> {
     let elsewhere = match (&args.for_lat, &args.for_lon) {
         (Some(lat), Some(lon)) => {
             let there = read::position(("--for-lat", lat), ("--for-lon", lon))?;
-            let (Some(swung_at), Some(utc)) = (swung_at, utc) else {
-                return Err(Error::Usage(
-                    "--for-lat and --for-lon need the place and date of the swing: --lat, --lon and --utc".to_owned(),
-                ));
-            };
-            Some(elsewhere(&only, &curve, (swung_at, utc), there, args.every.deg())?)
+            Some(elsewhere(&swing.rows, &curve, &places, there, args.every.deg())?)
         }
         _ => None,
     };
     let report = SwingReport {
         particulars: &particulars,
-        readings: &swing.readings,
+        rows: &swing.rows,
         bad_rows: &swing.bad_rows,
         curve: &curve,
         card: table_of(&curve, args.every.deg()),
         asked: asked.map(|asked| (asked.deg(), curve.on(asked))),
         elsewhere,
+        latitudes_mixed: latitude::are_different(places.iter().filter_map(|place| place.map(|(place, _)| place))),
     };
     if let Some(path) = &args.card_out {
         std::fs::write(path, report.card_csv(&particulars.date)).map_err(|source| Error::File { path: path.clone(), source })?;
@@ -130,33 +128,48 @@ pub fn run(args: Args) -> Result<Exit> {
 }
 
 fn heading(text: &str) -> Result<CompassBearing> {
-    let deg = text.trim().parse::<f64>().ok().filter(|deg| (0.0..=360.0).contains(deg));
-    let bad = || Error::Option { what: "--heading".to_owned(), bad: BadValue::new(text, "a heading by compass, 000 to 360") };
-    deg.map(CompassBearing::wrapping_deg).ok_or_else(bad)
+    let read = read_direction(text).map_err(|bad| Error::Option { what: "--heading".to_owned(), bad })?;
+    Ok(CompassBearing::wrapping_deg(read.value))
 }
 
-/// The curve to expect at another place.
+/// What a compass felt at each row, and when: from the row itself, else from the options.
+fn places(rows: &[SwingRow], by_option: Option<(Position, UtcInstant)>) -> Result<Vec<Option<(MagneticPlace, UtcInstant)>>> {
+    let place = |row: &SwingRow| row.taken.or(by_option).map(|(position, utc)| Ok((magnetic_place(position, utc)?, utc))).transpose();
+    rows.iter().map(place).collect()
+}
+
+fn magnetic_place(position: Position, utc: UtcInstant) -> Result<MagneticPlace> {
+    let field = field::field(position, utc, 0.0)?;
+    Ok(MagneticPlace::of(&field).ok_or(NoAnswer::WeakField { horizontal_nt: field.horizontal_nt })?)
+}
+
+/// The curve to expect at another place, on the date of the last reading.
 fn elsewhere(
-    readings: &[Reading],
+    rows: &[SwingRow],
     curve: &Curve,
-    (swung_at, utc): (Position, UtcInstant),
+    places: &[Option<(MagneticPlace, UtcInstant)>],
     there: Position,
     every_deg: f64,
 ) -> Result<Elsewhere> {
-    let place = |position: Position| {
-        let field = field::field(position, utc, 0.0)?;
-        MagneticPlace::of(&field).ok_or(shadowpin::error::NoAnswer::WeakField { horizontal_nt: field.horizontal_nt })
+    let located = rows.iter().zip(places).map(|(row, place)| place.map(|(place, _)| (row.reading, place)));
+    let (Some(located), Some(utc)) = (located.collect::<Option<Vec<_>>>(), places.iter().flatten().map(|(_, utc)| *utc).max()) else {
+        return Err(Error::Usage(
+            "--for-lat and --for-lon need the place and date of the readings: --lat, --lon and --utc, or columns lat, lon and utc"
+                .to_owned(),
+        ));
     };
-    let (from, to) = (place(swung_at)?, place(there)?);
-    let located: Vec<(Reading, MagneticPlace)> = readings.iter().map(|reading| (*reading, from)).collect();
+    let to = magnetic_place(there, utc)?;
     let by_latitude = latitude::fit_by_latitude(&located).map_err(|none| Error::Usage(none.to_string()))?;
+    // From readings of several latitudes the plain curve is a mean, which bounds nothing.
+    let swung_at = located.first().map(|(_, place)| *place).filter(|_| !latitude::are_different(located.iter().map(|(_, place)| *place)));
     Ok(Elsewhere {
         position: there,
         coefficients: by_latitude.coefficients_at(to),
         permanent: by_latitude.permanent(),
         reference_nt: by_latitude.reference_nt,
         induced: by_latitude.induced(),
-        bounds: latitude::bounds(curve, from, to),
+        bounds: swung_at.map_or([None; 2], |from| latitude::bounds(curve, from, to)),
+        set_aside: by_latitude.set_aside.iter().filter_map(|i| rows.get(*i).map(|row| row.number)).collect(),
         card: headings(every_deg).map(|h| (h, by_latitude.on(CompassBearing::wrapping_deg(h), to))).collect(),
     })
 }

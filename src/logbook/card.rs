@@ -1,8 +1,9 @@
 //! Reading deviation cards.
 
-use super::figures::{read_date, read_deviation, read_heading_deg};
+use super::figures::{read_day, read_deviation};
 use super::table::Table;
 use crate::angle::Deviation;
+use crate::angle::text::read_direction;
 use crate::compass::card::{Card, CardOf, Cards, EnteredBy};
 use crate::error::Result;
 
@@ -40,11 +41,11 @@ pub fn read_cards(name: &str, bytes: &[u8]) -> Result<Cards> {
     let mut cards: Vec<(CardOf, Vec<(f64, Deviation)>)> = Vec::new();
     for row in &table.rows {
         let at = |column: &str, bad| table.error(row, format!("{column}: {bad}"));
-        let heading_deg = read_heading_deg(row.cell(heading)).map_err(|bad| at("heading", bad))?;
+        let heading_deg = read_direction(row.cell(heading)).map_err(|bad| at("heading", bad))?.value;
         let deviation = read_deviation(row.cell(deviation)).map_err(|bad| at("deviation", bad))?;
         let from = match row.cell(valid_from) {
             "" => None,
-            text => Some(read_date(text).map_err(|bad| at("valid_from", bad))?),
+            text => Some(read_day(text).map_err(|bad| at("valid_from", bad))?),
         };
         let of = CardOf {
             vessel: row.cell(vessel).to_owned(),

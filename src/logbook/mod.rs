@@ -4,3 +4,5 @@ pub mod card;
 mod figures;
 pub mod swing;
 mod table;
+
+pub use figures::read_day;

@@ -1,10 +1,12 @@
 //! Reading a swing: headings and deviations already worked out.
 
-use super::figures::{read_deviation, read_heading_deg};
-use super::table::{Row, Table};
-use crate::angle::{CompassBearing, MagneticBearing};
+use super::figures::{read_day, read_deviation};
+use super::table::{Column, Row, Table};
+use crate::angle::text::{read_direction, read_latitude, read_longitude};
+use crate::angle::{CompassBearing, MagneticBearing, Position};
 use crate::compass::curve::{Reading, Turn};
 use crate::error::{BadValue, Result};
+use crate::time::UtcInstant;
 
 /// A row that cannot be used, with the reason.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -15,16 +17,41 @@ pub struct BadRow {
     pub why: String,
 }
 
+/// A row of a swing.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct SwingRow {
+    /// Data row, from 1.
+    pub number: usize,
+    /// Heading and deviation.
+    pub reading: Reading,
+    /// Where and when, where the row says so.
+    pub taken: Option<(Position, UtcInstant)>,
+}
+
 /// A swing as read.
 #[derive(Debug, Clone, Default)]
 pub struct Swing {
-    /// Readings, each with its data row, from 1.
-    pub readings: Vec<(usize, Reading)>,
-    /// Rows that cannot be used.
+    /// Rows that can be used.
+    pub rows: Vec<SwingRow>,
+    /// Rows that cannot.
     pub bad_rows: Vec<BadRow>,
 }
 
-/// Reads `compass_heading` (or `magnetic_heading`), `deviation` and, where noted, `turn`.
+/// What cannot be read: the column, and why.
+type InColumn = (&'static str, BadValue);
+
+/// The columns of a swing.
+struct Columns {
+    compass_heading: Column,
+    magnetic_heading: Column,
+    deviation: Column,
+    turn: Column,
+    lat: Column,
+    lon: Column,
+    utc: Column,
+}
+
+/// Reads `compass_heading` (or `magnetic_heading`), `deviation` and, where noted, `turn`, and `lat`, `lon`, `utc`.
 ///
 /// `name` is what messages call the file.
 ///
@@ -32,34 +59,59 @@ pub struct Swing {
 /// [`crate::error::Error::Content`] where the file as a whole cannot be used. Single rows that cannot are listed.
 pub fn read_swing(name: &str, bytes: &[u8]) -> Result<Swing> {
     let table = Table::read(name, bytes)?;
-    let [compass, magnetic, deviation, turn] = ["compass_heading", "magnetic_heading", "deviation", "turn"].map(|name| table.column(name));
-    if !deviation.is_there() || compass.is_there() == magnetic.is_there() {
+    let columns = Columns {
+        compass_heading: table.column("compass_heading"),
+        magnetic_heading: table.column("magnetic_heading"),
+        deviation: table.column("deviation"),
+        turn: table.column("turn"),
+        lat: table.column("lat"),
+        lon: table.column("lon"),
+        utc: table.column("utc"),
+    };
+    if !columns.deviation.is_there() || columns.compass_heading.is_there() == columns.magnetic_heading.is_there() {
         return Err(table.unusable(format!(
             "a swing has compass_heading and deviation, or the columns of an observation; the columns are {}",
             table.columns()
         )));
     }
-    let reading = |row: &Row| -> std::result::Result<Reading, (&str, BadValue)> {
-        let deviation = read_deviation(row.cell(deviation)).map_err(|bad| ("deviation", bad))?;
-        let heading = if compass.is_there() {
-            CompassBearing::wrapping_deg(read_heading_deg(row.cell(compass)).map_err(|bad| ("compass_heading", bad))?)
-        } else {
-            MagneticBearing::wrapping_deg(read_heading_deg(row.cell(magnetic)).map_err(|bad| ("magnetic_heading", bad))?) - deviation
-        };
-        Ok(Reading { heading, deviation, turn: read_turn(row.cell(turn)).map_err(|bad| ("turn", bad))? })
-    };
     let mut swing = Swing::default();
     for row in &table.rows {
-        match reading(row) {
-            Ok(reading) => swing.readings.push((row.number, reading)),
+        match columns.read(row) {
+            Ok(read) => swing.rows.push(read),
             Err((column, bad)) => swing.bad_rows.push(BadRow { number: row.number, why: format!("{column}: {bad}") }),
         }
     }
     Ok(swing)
 }
 
+impl Columns {
+    fn read(&self, row: &Row) -> std::result::Result<SwingRow, InColumn> {
+        let direction = |name: &'static str, column| read_direction(row.cell(column)).map(|r| r.value).map_err(|bad| (name, bad));
+        let deviation = read_deviation(row.cell(self.deviation)).map_err(|bad| ("deviation", bad))?;
+        let heading = if self.compass_heading.is_there() {
+            CompassBearing::wrapping_deg(direction("compass_heading", self.compass_heading)?)
+        } else {
+            MagneticBearing::wrapping_deg(direction("magnetic_heading", self.magnetic_heading)?) - deviation
+        };
+        let turn = read_turn(row.cell(self.turn)).map_err(|bad| ("turn", bad))?;
+        Ok(SwingRow { number: row.number, reading: Reading { heading, deviation, turn }, taken: self.taken(row)? })
+    }
+
+    /// Where and when: all three cells, or none.
+    fn taken(&self, row: &Row) -> std::result::Result<Option<(Position, UtcInstant)>, InColumn> {
+        let (lat, lon, utc) = (row.cell(self.lat), row.cell(self.lon), row.cell(self.utc));
+        if [lat, lon, utc].contains(&"") {
+            return Ok(None);
+        }
+        let lat = read_latitude(lat).map_err(|bad| ("lat", bad))?.value;
+        let lon = read_longitude(lon).map_err(|bad| ("lon", bad))?.value;
+        let utc = read_day(utc).map_err(|bad| ("utc", bad))?;
+        Ok(Some((Position { lat, lon }, utc)))
+    }
+}
+
 /// Which way the ship was turning; blank where not noted.
-pub(crate) fn read_turn(text: &str) -> std::result::Result<Option<Turn>, BadValue> {
+fn read_turn(text: &str) -> std::result::Result<Option<Turn>, BadValue> {
     match text.to_ascii_lowercase().as_str() {
         "" => Ok(None),
         "clockwise" => Ok(Some(Turn::Clockwise)),

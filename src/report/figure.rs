@@ -12,12 +12,6 @@ pub(crate) fn signed(x: f64, decimals: usize) -> String {
     if figure.bytes().all(|b| matches!(b, b'0' | b'.')) { figure } else { format!("{}{figure}", if x < 0.0 { '-' } else { '+' }) }
 }
 
-/// A heading in three figures and a decimal: `045.0`. Rounded first, wrapped second.
-pub(crate) fn heading(deg: f64) -> String {
-    let tenths = ((deg * 10.0).round() as i64).rem_euclid(3600);
-    format!("{:03}.{}", tenths / 10, tenths % 10)
-}
-
 /// For JSON and CSV: four decimals, never -0.
 pub(crate) fn round4(x: f64) -> f64 {
     (x * 1e4).round() / 1e4 + 0.0
@@ -28,13 +22,9 @@ mod tests {
     use super::*;
 
     #[test]
-    fn nil_has_no_name_and_360_is_000() {
+    fn nil_has_neither_name_nor_sign() {
         assert_eq!((east_west(-0.04, 1), east_west(-1.25, 1), east_west(0.05, 2)), ("0.0".into(), "1.2 W".into(), "0.05 E".into()));
         assert_eq!((signed(-0.004, 2), signed(1.5, 2), signed(-1.5, 1)), ("0.00".into(), "+1.50".into(), "-1.5".into()));
-        assert_eq!(
-            (heading(359.96), heading(22.5), heading(0.0), heading(90.0)),
-            ("000.0".into(), "022.5".into(), "000.0".into(), "090.0".into())
-        );
         assert!(round4(-0.000_01).is_sign_positive());
     }
 }

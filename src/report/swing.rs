@@ -1,10 +1,11 @@
 //! A swing: the coefficients, the fit, and the table of observed deviations.
 
-use super::figure::{east_west, heading, round4, signed};
+use super::figure::{east_west, round4, signed};
+use crate::angle::text::write;
 use crate::angle::{CompassBearing, Position};
 use crate::compass::curve::latitude::Part;
-use crate::compass::curve::{Coefficients, Curve, Estimate, Reading};
-use crate::logbook::swing::BadRow;
+use crate::compass::curve::{Coefficients, Curve, Estimate};
+use crate::logbook::swing::{BadRow, SwingRow};
 use crate::notice::Notice;
 use serde_json::{Map, Value, json};
 use std::fmt::Write;
@@ -42,6 +43,8 @@ pub struct Elsewhere {
     pub induced: [Option<Part>; 2],
     /// Where the data cannot tell: the coefficients there if B and C were all permanent, and if they were all induced.
     pub bounds: [Option<Coefficients>; 2],
+    /// Readings that cannot belong to a curve that changes with latitude, by data row.
+    pub set_aside: Vec<usize>,
     /// The deviations there, where the data can tell.
     pub card: Vec<(f64, Option<Part>)>,
 }
@@ -58,8 +61,8 @@ impl Elsewhere {
 pub struct SwingReport<'a> {
     /// What the table says of itself.
     pub particulars: &'a Particulars,
-    /// The readings, each with its data row, from 1.
-    pub readings: &'a [(usize, Reading)],
+    /// The readings, in the order that the curve was fitted to.
+    pub rows: &'a [SwingRow],
     /// Rows that could not be used.
     pub bad_rows: &'a [BadRow],
     /// The curve.
@@ -70,6 +73,8 @@ pub struct SwingReport<'a> {
     pub asked: Option<(f64, Option<Estimate>)>,
     /// The curve at another place.
     pub elsewhere: Option<Elsewhere>,
+    /// Whether the readings come from different magnetic latitudes, so that one curve does not hold for all.
+    pub latitudes_mixed: bool,
 }
 
 /// The curve on every `step_deg` degrees.
@@ -85,7 +90,10 @@ pub fn headings(step_deg: f64) -> impl Iterator<Item = f64> {
 impl SwingReport<'_> {
     fn notices(&self) -> Vec<Notice> {
         let untold = self.elsewhere.as_ref().filter(|elsewhere| !elsewhere.is_told()).map(|_| Notice::LatitudeUntold);
-        self.curve.notices.iter().copied().chain(untold).collect()
+        let mixed = self.latitudes_mixed.then_some(Notice::LatitudesMixed);
+        // Mixed latitudes explain a large scatter: it is no sign of wrong readings.
+        let of_curve = self.curve.notices.iter().filter(|n| !(self.latitudes_mixed && matches!(n, Notice::LargeScatter { .. })));
+        of_curve.copied().chain(mixed).chain(untold).collect()
     }
 
     /// For a person.
@@ -127,14 +135,20 @@ impl SwingReport<'_> {
         out.push_str("\nHeading by compass   Deviation     u\n");
         for (deg, estimate) in &self.card {
             let _ = match estimate {
-                Some(e) => writeln!(out, "{:>18}   {:>9}   {:.1}", heading(*deg), named(e.deviation_deg), e.u_deg),
-                None => writeln!(out, "{:>18}   {:>9}   -", heading(*deg), "unknown"),
+                Some(e) => writeln!(out, "{:>18}   {:>9}   {:.1}", write::direction(*deg, 1), named(e.deviation_deg), e.u_deg),
+                None => writeln!(out, "{:>18}   {:>9}   -", write::direction(*deg, 1), "unknown"),
             };
         }
         if let Some((deg, estimate)) = &self.asked {
             let _ = match estimate {
-                Some(e) => writeln!(out, "\nOn heading {}: deviation {}, u {:.1}", heading(*deg), named(e.deviation_deg).trim(), e.u_deg),
-                None => writeln!(out, "\nOn heading {}: these readings cannot tell the deviation", heading(*deg)),
+                Some(e) => writeln!(
+                    out,
+                    "\nOn heading {}: deviation {}, u {:.1}",
+                    write::direction(*deg, 1),
+                    named(e.deviation_deg).trim(),
+                    e.u_deg
+                ),
+                None => writeln!(out, "\nOn heading {}: these readings cannot tell the deviation", write::direction(*deg, 1)),
             };
         }
     }
@@ -171,7 +185,7 @@ impl SwingReport<'_> {
         let _ = writeln!(
             out,
             "\n{} readings used, {} set aside; root mean square of the residuals {:.2}; u from a scatter of {:.2}",
-            self.readings.len() - curve.set_aside.len(),
+            self.rows.len() - curve.set_aside.len(),
             curve.set_aside.len(),
             curve.rms_deg,
             curve.scatter_deg
@@ -183,11 +197,11 @@ impl SwingReport<'_> {
 
     fn readings_text(&self, out: &mut String) {
         out.push_str("\n    Row   Heading   Deviation   Off the curve\n");
-        for (i, ((row, reading), residual)) in self.readings.iter().zip(&self.curve.residuals_deg).enumerate() {
+        for (i, (SwingRow { number, reading, .. }, residual)) in self.rows.iter().zip(&self.curve.residuals_deg).enumerate() {
             let _ = write!(
                 out,
-                "{row:>7}   {:>7}   {:>9}   {:>13}",
-                heading(reading.heading.deg()),
+                "{number:>7}   {:>7}   {:>9}   {:>13}",
+                write::direction(reading.heading.deg(), 1),
                 named(reading.deviation.deg()),
                 signed(*residual, 1)
             );
@@ -215,7 +229,7 @@ impl SwingReport<'_> {
         let by_name = |c: Coefficients| {
             Coefficients::NAMES.into_iter().zip(c.to_array()).map(|(n, x)| (n.to_owned(), json!(round4(x)))).collect::<Map<_, _>>()
         };
-        let row = |index: usize| self.readings.get(index).map(|(row, _)| *row);
+        let row = |index: usize| self.rows.get(index).map(|row| row.number);
         let aside = |s: &crate::compass::curve::SetAside| json!({ "row": row(s.index), "residual": round4(s.residual_deg) });
         let line = |(deg, e): &(f64, Option<Estimate>)| json!({ "compass_heading": deg, "deviation": e.map(|e| round4(e.deviation_deg)), "deviation_u": e.map(|e| round4(e.u_deg)) });
         let mut object = json!({
@@ -274,7 +288,7 @@ const TELLING_CORRELATION: f64 = 0.7;
 
 /// A deviation in a column: `1.5 E`, and nil with the room of the name.
 fn named(deg: f64) -> String {
-    let text = east_west(deg, 1);
+    let text = write::east_west(deg);
     if text.contains(' ') { text } else { format!("{text}  ") }
 }
 
@@ -284,15 +298,7 @@ fn quoted(cell: &str) -> String {
 }
 
 fn elsewhere_text(elsewhere: &Elsewhere, out: &mut String) {
-    let (lat, lon) = (elsewhere.position.lat.deg(), elsewhere.position.lon.deg());
-    let _ = writeln!(
-        out,
-        "\nAt {:.2} {}, {:.2} {}",
-        lat.abs(),
-        if lat < 0.0 { "S" } else { "N" },
-        lon.abs(),
-        if lon < 0.0 { "W" } else { "E" }
-    );
+    let _ = writeln!(out, "\nAt {}", write::position(elsewhere.position));
     for (part, name) in elsewhere.permanent.iter().zip(["B", "C"]) {
         if let Some(p) = part {
             let _ = writeln!(
@@ -309,6 +315,9 @@ fn elsewhere_text(elsewhere: &Elsewhere, out: &mut String) {
             let _ = writeln!(out, "{name}, induced part    {:>7}, u {:.2}, where the inclination is 45", signed(p.value_deg, 2), p.u_deg);
         }
     }
+    for row in &elsewhere.set_aside {
+        let _ = writeln!(out, "Row {row} was set aside: too far from what the others make of it");
+    }
     if elsewhere.is_told() {
         out.push_str("Coefficients to expect there: ");
         let expected = elsewhere.coefficients.iter().zip(Coefficients::NAMES).filter_map(|(part, name)| {
@@ -319,15 +328,15 @@ fn elsewhere_text(elsewhere: &Elsewhere, out: &mut String) {
         out.push_str("\nHeading by compass   Deviation to expect there     u\n");
         for (deg, part) in &elsewhere.card {
             let _ = match part {
-                Some(p) => writeln!(out, "{:>18}   {:>25}   {:.1}", heading(*deg), named(p.value_deg), p.u_deg),
-                None => writeln!(out, "{:>18}   {:>25}   -", heading(*deg), "unknown"),
+                Some(p) => writeln!(out, "{:>18}   {:>25}   {:.1}", write::direction(*deg, 1), named(p.value_deg), p.u_deg),
+                None => writeln!(out, "{:>18}   {:>25}   -", write::direction(*deg, 1), "unknown"),
             };
         }
     } else {
         for (bound, of) in elsewhere.bounds.iter().zip(["all permanent", "all induced in vertical iron"]) {
             let _ = match bound {
                 Some(c) => writeln!(out, "If B and C are {of}: B {}, C {} there", signed(c.b, 1), signed(c.c, 1)),
-                None => writeln!(out, "If B and C are {of}: nothing can be said, the swing was made near the magnetic equator"),
+                None => writeln!(out, "If B and C are {of}: these readings do not say"),
             };
         }
     }
@@ -347,6 +356,7 @@ fn elsewhere_json(elsewhere: &Elsewhere) -> Value {
         "reference_nt": round4(elsewhere.reference_nt),
         "permanent": { "B": part(permanent_b), "C": part(permanent_c) },
         "induced": { "B": part(induced_b), "C": part(induced_c) },
+        "set_aside": elsewhere.set_aside,
         "if_all_permanent": all_permanent,
         "if_all_induced": all_induced,
         "card": elsewhere.card.iter().map(|(deg, p)| json!({

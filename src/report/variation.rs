@@ -2,13 +2,13 @@
 
 use super::figure::{east_west, round4, signed};
 use crate::angle::Position;
+use crate::angle::text::write;
 use crate::compass::field::Field;
 use serde_json::{Value, json};
 use std::fmt::Write;
 
 /// For a person.
 pub fn text(field: &Field, position: Position, height_km: f64) -> String {
-    let (lat, lon) = (position.lat.deg(), position.lon.deg());
     let (from, to) = field.model.span();
     let yearly = &field.annual;
     let mut out = String::new();
@@ -16,7 +16,7 @@ pub fn text(field: &Field, position: Position, height_km: f64) -> String {
     let _ = write!(
         out,
         "\
-Variation at {:.3} {}, {:.3} {}, in {:.2}{}
+Variation at {}, in {:.2}{}
 
 Variation             {:>10}   u {:.1} (one standard uncertainty, local disturbance included)
 Change in a year      {:>10}
@@ -28,13 +28,10 @@ North, east, down     {:.0}, {:.0}, {:.0} nT
 Model  {}, for {from:.1} to {to:.1}
        {}
 ",
-        lat.abs(),
-        if lat < 0.0 { "S" } else { "N" },
-        lon.abs(),
-        if lon < 0.0 { "W" } else { "E" },
+        write::position(position),
         field.year,
         if height_km == 0.0 { String::new() } else { format!(", {height_km} km above the ellipsoid") },
-        east_west(field.variation.deg(), 1),
+        write::east_west(field.variation.deg()),
         field.variation_u_deg,
         east_west(yearly.variation_deg, 2),
         signed(field.inclination_deg, 1),
@@ -49,7 +46,7 @@ Model  {}, for {from:.1} to {to:.1}
         field.model.name(),
         field.model.edition(),
     );
-    if lat.abs() == 90.0 {
+    if position.lat.deg().abs() == 90.0 {
         out.push_str("\nAt the pole true north has no direction: variation is reckoned from the meridian of the longitude given.\n");
     }
     for notice in field.notices() {

@@ -150,9 +150,12 @@ fn files() {
         ("compass_heading,dev\n0,1\n", "card.csv: no column deviation; the columns are compass_heading, dev"),
         (
             "compass_heading,deviation\n0,1\n90,-1.5W\n",
-            "card.csv, line 3: deviation: \"-1.5W\": expected a deviation in degrees, as 1.5W or -1.5; a sign or a letter, not both",
+            "card.csv, line 3: deviation: \"-1.5W\": expected an error such as 1.5E, 1.5 W, -1.5 or 1½ W; a sign or a letter, not both",
         ),
-        ("compass_heading,deviation\n400,1\n", "card.csv, line 2: heading: \"400\": expected a heading, 000 to 360"),
+        (
+            "compass_heading,deviation\n400,1\n",
+            "card.csv, line 2: heading: \"400\": expected a direction from 000 to 360, such as 045, 045.5, 045½ or N 68 E; it is over 360",
+        ),
         ("compass_heading,deviation,vessel\n0,1,A\n0,2,A\n", "card.csv: A: two different deviations (1.0 and 2.0) for heading 000.0"),
         ("compass_heading,deviation,Deviation\n0,1,1\n", "card.csv: the column deviation stands there twice"),
     ] {

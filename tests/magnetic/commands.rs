@@ -104,7 +104,7 @@ fn a_bad_row_is_a_problem_and_the_run_goes_on() {
     let input = "compass_heading,deviation\n0,1W\n45,x\n90,2E\n135,1.5\n180,1\n225,0\n270,-1\n315,-1.5\n";
     let out = run(&["swing", "-"], input);
     assert_eq!(out.status.code(), Some(3));
-    assert!(text(&out.stdout).contains("      2   not used: deviation: \"x\": expected a deviation in degrees, as 1.5W or -1.5"));
+    assert!(text(&out.stdout).contains("      2   not used: deviation: \"x\": expected an error such as 1.5E, 1.5 W, -1.5 or 1½ W"));
 }
 
 #[test]
@@ -203,7 +203,40 @@ fn variation_at_its_edges() {
     let (code, out) = variation(&["--lat", "10", "--lon", "20", "--year", "2031.5"]);
     assert_eq!((code, out.as_str()), (2, "shadowpin: no field model for 2031.50: the models span 1900.0 to 2031.0\n"));
     let (code, out) = variation(&["--lat", "91", "--lon", "20", "--year", "2026"]);
-    assert_eq!((code, out.as_str()), (2, "shadowpin: --lat: \"91\": expected a latitude, 90 S to 90 N\n"));
+    assert_eq!(
+        (code, out.as_str()),
+        (2, "shadowpin: --lat: \"91\": expected a latitude from 90 S to 90 N; are latitude and longitude exchanged?\n")
+    );
     let (code, _) = variation(&["--lat", "10", "--lon", "20"]);
     assert_eq!(code, 2);
+}
+
+/// Deviations observed in the English Channel and off the Cape, of a compass with permanent and induced parts.
+#[test]
+fn elsewhere_from_two_latitudes() {
+    use shadowpin::angle::{CompassBearing, Position};
+    use shadowpin::compass::curve::{Coefficients, latitude::MagneticPlace};
+    use shadowpin::compass::field::field_in_year;
+    let b_at = |lat: f64, lon: f64| {
+        let place = MagneticPlace::of(&field_in_year(Position::from_deg(lat, lon).unwrap(), 2026.16, 0.0).unwrap()).unwrap();
+        5.0 * 20_000.0 / place.horizontal_nt - 3.0 * place.tan_inclination
+    };
+    let mut rows = String::from("compass_heading,deviation,lat,lon,utc\n");
+    for (lat, lon) in [(50.0, -5.0), (-34.0, 18.0)] {
+        let curve = Coefficients { a: 0.0, b: b_at(lat, lon), c: 1.0, d: 0.5, e: 0.0 };
+        for heading in (0..360).step_by(30) {
+            let deviation = curve.deviation_deg(CompassBearing::wrapping_deg(f64::from(heading)));
+            rows += &format!("{heading},{deviation:.1},{lat},{lon},2026-03-01T12:00Z\n");
+        }
+    }
+    let out = run(&["swing", "-", "--for-lat", "1-15N", "--for-lon", "103-50E", "--format", "json"], &rows);
+    let v: Value = serde_json::from_slice(&out.stdout).unwrap_or_else(|e| panic!("{e}: {}", text(&out.stderr)));
+    let b = &v["elsewhere"]["coefficients"]["B"];
+    let off = b["value"].as_f64().unwrap() - b_at(1.25, 103.0 + 50.0 / 60.0);
+    // The figures are written to 0.1: far inside the u that readings at sea would have.
+    assert!(off.abs() < 0.1 && b["u"].as_f64().unwrap() < 0.5, "{b} {off}");
+    assert_eq!(v["notices"], serde_json::json!(["latitudes-mixed"]));
+    assert_eq!(v["elsewhere"]["card"].as_array().unwrap().len(), 24);
+    let words = text(&run(&["swing", "-", "--for-lat", "1-15N", "--for-lon", "103-50E"], &rows).stdout);
+    assert!(words.contains("B, permanent part") && words.contains("Deviation to expect there"), "{words}");
 }

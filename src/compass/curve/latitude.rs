@@ -33,6 +33,21 @@ impl MagneticPlace {
     }
 }
 
+/// Ratio of the horizontal intensities from which on two places are different for a compass (our own: a tenth of B and C).
+const DIFFERENT_RATIO: f64 = 1.1;
+/// Difference of the tangents of the inclination, likewise.
+const DIFFERENT_TANGENT: f64 = 0.2;
+
+/// Whether B and C may differ much between these places.
+pub fn are_different(places: impl Iterator<Item = MagneticPlace>) -> bool {
+    let (mut weakest, mut strongest, mut lowest, mut highest) = (f64::MAX, 0.0_f64, f64::MAX, f64::MIN);
+    for place in places {
+        (weakest, strongest) = (weakest.min(place.horizontal_nt), strongest.max(place.horizontal_nt));
+        (lowest, highest) = (lowest.min(place.tan_inclination), highest.max(place.tan_inclination));
+    }
+    strongest > DIFFERENT_RATIO * weakest || highest - lowest > DIFFERENT_TANGENT
+}
+
 /// A figure with its standard uncertainty, degrees.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Part {
