@@ -153,6 +153,9 @@ fn blunders_are_found_from_eight_headings_on() {
         (24, &[10.0, 20.0], 0.97),
         (36, &[5.0, 5.0], 0.97),
         (36, &[10.0, 10.0, 10.0, 10.0], 0.97),
+        (41, &[6.0, 10.0, 15.0], 0.97),
+        (48, &[5.0, 5.0, 20.0, 20.0, 20.0], 0.97),
+        (72, &[8.0; 7], 0.97),
     ] {
         let tally = many(count, 0.4, sizes, 5000..5300);
         let found = tally.found as f64 / tally.blunders as f64;
@@ -312,5 +315,43 @@ fn many_rows_with_blunders() {
     assert!(aside.len() <= 102, "{}", aside.len());
     for (found, made) in curve.coefficients.to_array().into_iter().zip(truth.to_array()) {
         assert!((found - made).abs() < 0.1);
+    }
+}
+
+/// Whatever is read, no figure is ever not a number, and nothing stops the program.
+mod whatever_is_read {
+    use super::*;
+    use proptest::prelude::*;
+
+    proptest! {
+        #[test]
+        fn no_figure_is_not_a_number(
+            rows in prop::collection::vec((0u16..3600, -1800i16..=1800, 0u8..3), 0..45),
+            narrow in any::<bool>(),
+            small in any::<bool>(),
+        ) {
+            let readings: Vec<Reading> = rows
+                .iter()
+                .map(|(heading, deviation, turn)| Reading {
+                    heading: CompassBearing::wrapping_deg(f64::from(*heading) / if narrow { 90.0 } else { 10.0 }),
+                    deviation: Deviation::wrapping_deg(f64::from(*deviation) / if small { 200.0 } else { 10.0 }),
+                    turn: [None, Some(Turn::Clockwise), Some(Turn::Anticlockwise)][usize::from(*turn)],
+                })
+                .collect();
+            if let Ok(curve) = fit(&readings) {
+                prop_assert!(curve.u_deg().iter().flatten().all(|u| u.is_finite() && *u > 0.0));
+                prop_assert!(curve.residuals_deg.iter().all(|r| r.is_finite()));
+                prop_assert!(curve.rms_deg.is_finite() && curve.scatter_deg >= 0.5);
+                prop_assert!(curve.set_aside.len() * 4 <= readings.len().max(4) || readings.len() > 40);
+                for heading in (0..360).step_by(20) {
+                    if let Some(e) = curve.on(CompassBearing::wrapping_deg(f64::from(heading))) {
+                        prop_assert!(e.deviation_deg.is_finite() && e.u_deg.is_finite());
+                    }
+                }
+                for (one, other) in [(0, 1), (1, 2), (3, 4)] {
+                    prop_assert!(curve.correlation(one, other).is_none_or(|r| r.abs() <= 1.0 + 1e-9));
+                }
+            }
+        }
     }
 }

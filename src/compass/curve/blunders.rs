@@ -19,7 +19,7 @@ const TOSS_UP: f64 = 9.0;
 /// Rows beyond what the unknowns need that must be left.
 const ROWS_TO_SPARE: usize = 1;
 /// With more rows than this the median of the residuals is trusted, and pairs are not all tried.
-const MANY_ROWS: usize = 200;
+const MANY_ROWS: usize = 40;
 
 /// Median of absolute values to standard deviation, for the normal distribution (1 / 0.6745).
 const MEDIAN_TO_SIGMA: f64 = 1.482_6;
