@@ -12,15 +12,15 @@ pub struct Limits {
 /// Thresholds.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Thresholds {
-    /// x
+    /// Altitude to which a bearing is firm, degrees.
     pub altitude_fair_deg: f64,
-    /// x
+    /// Altitude from which a bearing is weak, degrees.
     pub altitude_weak_deg: f64,
-    /// x
+    /// Degrees of azimuth a degree of altitude on the horizon, from which that is said.
     pub horizon_weak: f64,
-    /// x
+    /// Heel from which it is said, degrees.
     pub heeled_deg: f64,
-    /// x
+    /// Latitude from which a gyro is doubtful, degrees.
     pub gyro_doubtful_latitude_deg: f64,
 }
 impl Default for Thresholds {
@@ -46,9 +46,9 @@ pub struct Uncertainty {
     pub heading_comparison_deg: f64,
     /// Altitude of the instant of rising or setting, degrees.
     pub horizon_instant_deg: f64,
-    /// x
+    /// Height of eye taken where none is given, metres.
     pub eye_height_assumed_m: f64,
-    /// x
+    /// Its uncertainty, metres.
     pub eye_height_assumed_u_m: f64,
 }
 
@@ -65,12 +65,5 @@ impl Default for Uncertainty {
             eye_height_assumed_m: 15.0,
             eye_height_assumed_u_m: 5.0,
         }
-    }
-}
-
-impl Limits {
-    /// x
-    pub fn from_toml(_: &str, _: &str) -> crate::error::Result<Self> {
-        Ok(Self::default())
     }
 }

@@ -6,6 +6,9 @@ mod exit;
 mod instruments;
 mod one_row;
 mod output;
+mod read;
+mod swing;
+mod variation;
 mod when_where;
 
 use clap::{Parser, Subcommand};
@@ -27,6 +30,10 @@ struct Cli {
 enum Command {
     Azimuth(azimuth::Args),
     Amplitude(amplitude::Args),
+    /// A deviation curve from the deviations of a swing
+    Swing(swing::Args),
+    /// Variation and the earth's field at a place and date
+    Variation(variation::Args),
 }
 
 /// Runs the command line and answers the exit code: 0 nothing to report, 1 queries, 2 could not run, 3 problem rows.
@@ -52,5 +59,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
     match command {
         Command::Azimuth(args) => azimuth::run(args),
         Command::Amplitude(args) => amplitude::run(args),
+        Command::Swing(args) => swing::run(args),
+        Command::Variation(args) => variation::run(args),
     }
 }

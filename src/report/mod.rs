@@ -3,6 +3,9 @@
 pub mod amplitude;
 pub mod azimuth;
 mod column;
+mod figure;
 pub mod fixed;
 pub mod rows;
+pub mod swing;
+pub mod variation;
 mod words;

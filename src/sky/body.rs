@@ -9,8 +9,8 @@ pub enum Body {
     Moon,
     /// One of the four navigational planets.
     Planet(Planet),
-    /// x
-    Star(u8),
+    /// A star.
+    Star(Star),
 }
 
 /// The planets used in navigation.
@@ -26,13 +26,29 @@ pub enum Planet {
     Saturn,
 }
 
+/// The stars used in navigation.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Star {}
+
 impl Body {
-    /// x
+    /// The name, as it is printed.
     pub fn name(self) -> &'static str {
-        "Sun"
+        match self {
+            Self::Sun => "Sun",
+            Self::Moon => "Moon",
+            Self::Planet(Planet::Venus) => "Venus",
+            Self::Planet(Planet::Mars) => "Mars",
+            Self::Planet(Planet::Jupiter) => "Jupiter",
+            Self::Planet(Planet::Saturn) => "Saturn",
+            Self::Star(star) => match star {},
+        }
     }
-    /// x
-    pub fn from_name(_: &str) -> Result<Self, crate::error::BadValue> {
-        Ok(Self::Sun)
+
+    /// The body of that name, in any case.
+    ///
+    /// # Errors
+    /// [`BadValue`](crate::error::BadValue) for a name that is not known.
+    pub fn from_name(text: &str) -> Result<Self, crate::error::BadValue> {
+        if text.trim().eq_ignore_ascii_case("sun") { Ok(Self::Sun) } else { Err(crate::error::BadValue::new(text, "a body")) }
     }
 }

@@ -2,6 +2,7 @@
 //!
 //! The files they read stand in `fixtures/published`; `fixtures/README.md` names the source of each.
 
+mod pub226;
 mod wmm2025;
 
 /// A published file as delivered: its path below `fixtures/published`.

@@ -111,7 +111,7 @@ impl Field {
 /// ```
 /// use shadowpin::{angle::Position, compass::field::field_in_year};
 /// let field = field_in_year(Position::from_deg(50.0, -5.0).unwrap(), 2025.5, 0.0)?;
-/// assert_eq!(format!("{:.1}", field.variation.deg()), "-1.4");
+/// assert_eq!(format!("{:.1}", field.variation.deg()), "-0.5");
 /// # Ok::<(), shadowpin::error::NoAnswer>(())
 /// ```
 pub fn field(position: Position, utc: UtcInstant, height_km: f64) -> Result<Field, NoAnswer> {

@@ -1,0 +1,175 @@
+//! `shadowpin swing`
+
+use super::exit::Exit;
+use super::output::{Format, OutputArgs};
+use super::read;
+use clap::ValueEnum;
+use shadowpin::angle::text::read_direction;
+use shadowpin::angle::{CompassBearing, Position};
+use shadowpin::compass::curve::latitude::{self, MagneticPlace};
+use shadowpin::compass::curve::{Curve, Reading, fit};
+use shadowpin::compass::field;
+use shadowpin::error::{Error, NoAnswer, Result};
+use shadowpin::logbook::swing::{SwingRow, read_swing};
+use shadowpin::report::swing::{Elsewhere, Particulars, SwingReport, headings, table_of};
+use shadowpin::time::UtcInstant;
+use std::path::PathBuf;
+
+/// Coefficients A to E with their uncertainty, the fit, and a table of the deviations, from the deviations on five headings or more.
+#[derive(Debug, clap::Args)]
+#[command(after_help = "Example:\n  shadowpin swing swing.csv --vessel \"Amber Tern\" --compass standard --card-out card.csv\n\n\
+The file has the columns compass_heading and deviation (1.5W or -1.5), and may have turn (clockwise, anticlockwise).")]
+pub struct Args {
+    /// The swing; - for standard input
+    file: PathBuf,
+    /// Spacing of the table, degrees
+    #[arg(long, value_enum, default_value_t = Every::Fifteen)]
+    every: Every,
+    /// Deviation on this heading by compass too
+    #[arg(long, value_name = "DEGREES")]
+    heading: Option<String>,
+    /// Write the table as a deviation card to this file
+    #[arg(long, value_name = "FILE")]
+    card_out: Option<PathBuf>,
+    /// Vessel, for the table's head
+    #[arg(long, default_value = "")]
+    vessel: String,
+    /// Magnetic compass, for the table's head
+    #[arg(long, default_value = "")]
+    compass: String,
+    /// Place in words, for the table's head
+    #[arg(long, default_value = "")]
+    place: String,
+    /// Correctors as found, for the table's head
+    #[arg(long, default_value = "")]
+    correctors: String,
+    /// Date and time of the swing, UTC
+    #[arg(long)]
+    utc: Option<String>,
+    /// Latitude of the swing
+    #[arg(long, allow_hyphen_values = true, requires_all = ["lon", "utc"])]
+    lat: Option<String>,
+    /// Longitude of the swing
+    #[arg(long, allow_hyphen_values = true, requires = "lat")]
+    lon: Option<String>,
+    /// The curve to expect at this latitude
+    #[arg(long, allow_hyphen_values = true, requires = "for_lon")]
+    for_lat: Option<String>,
+    /// The curve to expect at this longitude
+    #[arg(long, allow_hyphen_values = true, requires = "for_lat")]
+    for_lon: Option<String>,
+    #[command(flatten)]
+    output: OutputArgs,
+}
+
+/// Spacings of a table.
+#[derive(Debug, Clone, Copy, ValueEnum)]
+enum Every {
+    #[value(name = "10")]
+    Ten,
+    #[value(name = "15")]
+    Fifteen,
+    #[value(name = "22.5")]
+    Points,
+}
+
+impl Every {
+    fn deg(self) -> f64 {
+        match self {
+            Self::Ten => 10.0,
+            Self::Fifteen => 15.0,
+            Self::Points => 22.5,
+        }
+    }
+}
+
+pub fn run(args: Args) -> Result<Exit> {
+    let utc = args.utc.as_deref().map(|text| read::utc("--utc", text)).transpose()?;
+    let swung_at = match (&args.lat, &args.lon) {
+        (Some(lat), Some(lon)) => Some(read::position(("--lat", lat), ("--lon", lon))?),
+        _ => None,
+    };
+    let asked = args.heading.as_deref().map(heading).transpose()?;
+    let (name, bytes) = read::content(&args.file)?;
+    let swing = read_swing(&name, &bytes)?;
+    let readings: Vec<Reading> = swing.rows.iter().map(|row| row.reading).collect();
+    let curve = fit(&readings).map_err(|none| Error::Content { file: name, line: 0, message: none.to_string() })?;
+    let places = places(&swing.rows, swung_at.zip(utc))?;
+
+    let date = utc.map(|utc| utc.to_chrono().format("%Y-%m-%d").to_string()).unwrap_or_default();
+    let particulars =
+        Particulars { vessel: args.vessel, magnetic_compass: args.compass, date, place: args.place, correctors: args.correctors };
+    let elsewhere = match (&args.for_lat, &args.for_lon) {
+        (Some(lat), Some(lon)) => {
+            let there = read::position(("--for-lat", lat), ("--for-lon", lon))?;
+            Some(elsewhere(&swing.rows, &curve, &places, there, args.every.deg())?)
+        }
+        _ => None,
+    };
+    let report = SwingReport {
+        particulars: &particulars,
+        rows: &swing.rows,
+        bad_rows: &swing.bad_rows,
+        curve: &curve,
+        card: table_of(&curve, args.every.deg()),
+        asked: asked.map(|asked| (asked.deg(), curve.on(asked))),
+        elsewhere,
+        latitudes_mixed: latitude::are_different(places.iter().filter_map(|place| place.map(|(place, _)| place))),
+    };
+    if let Some(path) = &args.card_out {
+        std::fs::write(path, report.card_csv(&particulars.date)).map_err(|source| Error::File { path: path.clone(), source })?;
+    }
+    args.output.write(&match args.output.format {
+        Format::Text => report.text(),
+        Format::Json => report.json().to_string(),
+        Format::Csv => report.csv(),
+    })?;
+    Ok(if swing.bad_rows.is_empty() { Exit::Clean } else { Exit::Problems })
+}
+
+fn heading(text: &str) -> Result<CompassBearing> {
+    let read = read_direction(text).map_err(|bad| Error::Option { what: "--heading".to_owned(), bad })?;
+    Ok(CompassBearing::wrapping_deg(read.value))
+}
+
+/// What a compass felt at each row, and when: from the row itself, else from the options.
+fn places(rows: &[SwingRow], by_option: Option<(Position, UtcInstant)>) -> Result<Vec<Option<(MagneticPlace, UtcInstant)>>> {
+    let place = |row: &SwingRow| row.taken.or(by_option).map(|(position, utc)| Ok((magnetic_place(position, utc)?, utc))).transpose();
+    rows.iter().map(place).collect()
+}
+
+fn magnetic_place(position: Position, utc: UtcInstant) -> Result<MagneticPlace> {
+    let field = field::field(position, utc, 0.0)?;
+    Ok(MagneticPlace::of(&field).ok_or(NoAnswer::WeakField { horizontal_nt: field.horizontal_nt })?)
+}
+
+/// The curve to expect at another place, on the date of the last reading.
+fn elsewhere(
+    rows: &[SwingRow],
+    curve: &Curve,
+    places: &[Option<(MagneticPlace, UtcInstant)>],
+    there: Position,
+    every_deg: f64,
+) -> Result<Elsewhere> {
+    let located = rows.iter().zip(places).map(|(row, place)| place.map(|(place, _)| (row.reading, place)));
+    let (Some(located), Some(utc)) = (located.collect::<Option<Vec<_>>>(), places.iter().flatten().map(|(_, utc)| *utc).max()) else {
+        return Err(Error::Usage(
+            "--for-lat and --for-lon need the place and date of the readings: --lat, --lon and --utc, or columns lat, lon and utc"
+                .to_owned(),
+        ));
+    };
+    let to = magnetic_place(there, utc)?;
+    let by_latitude = latitude::fit_by_latitude(&located).map_err(|none| Error::Usage(none.to_string()))?;
+    // From readings of several latitudes the plain curve is a mean, which bounds nothing.
+    let swung_at = located.first().map(|(_, place)| *place).filter(|_| !latitude::are_different(located.iter().map(|(_, place)| *place)));
+    Ok(Elsewhere {
+        position: there,
+        coefficients: by_latitude.coefficients_at(to),
+        permanent: by_latitude.permanent(),
+        reference_nt: by_latitude.reference_nt,
+        induced: by_latitude.induced(),
+        bounds: swung_at.map_or([None; 2], |from| latitude::bounds(curve, from, to)),
+        set_aside: by_latitude.set_aside.iter().filter_map(|i| rows.get(*i).map(|row| row.number)).collect(),
+        card: headings(every_deg).map(|h| (h, by_latitude.on(CompassBearing::wrapping_deg(h), to))).collect(),
+    })
+}
