@@ -55,10 +55,9 @@ impl Instruments {
 
 /// The limits of a file, or the built-in ones.
 pub fn read_limits(path: Option<&Path>) -> Result<Limits> {
-    match path {
-        None => Ok(Limits::default()),
-        Some(path) => Err(Error::Usage(format!("{}: no limits file can be read yet", path.display()))),
-    }
+    let Some(path) = path else { return Ok(Limits::default()) };
+    let text = std::fs::read_to_string(path).map_err(|source| Error::File { path: path.to_owned(), source })?;
+    Limits::from_toml(&text, &path.display().to_string())
 }
 
 fn direction(name: &str, text: &Option<String>) -> Result<Option<Reading<f64>>> {

@@ -3,10 +3,14 @@
 mod amplitude;
 mod azimuth;
 mod exit;
+mod files;
 mod instruments;
+mod limits;
 mod one_row;
 mod output;
+mod plan;
 mod read;
+mod self_check;
 mod swing;
 mod variation;
 mod when_where;
@@ -30,6 +34,9 @@ struct Cli {
 enum Command {
     Azimuth(azimuth::Args),
     Amplitude(amplitude::Args),
+    Plan(plan::Args),
+    Limits(limits::Args),
+    SelfCheck(self_check::Args),
     /// A deviation curve from the deviations of a swing
     Swing(swing::Args),
     /// Variation and the earth's field at a place and date
@@ -59,6 +66,9 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
     match command {
         Command::Azimuth(args) => azimuth::run(args),
         Command::Amplitude(args) => amplitude::run(args),
+        Command::Plan(args) => plan::run(args),
+        Command::Limits(args) => limits::run(args),
+        Command::SelfCheck(args) => self_check::run(args),
         Command::Swing(args) => swing::run(args),
         Command::Variation(args) => variation::run(args),
     }

@@ -5,6 +5,8 @@ pub mod azimuth;
 mod column;
 mod figure;
 pub mod fixed;
+pub mod limits;
+pub mod plan;
 pub mod rows;
 pub mod swing;
 pub mod variation;

@@ -12,6 +12,8 @@ pub fn file(name: &str) -> String {
 }
 
 mod azimuth_table;
+mod jpl_bodies;
 mod jpl_rise_set;
 mod jpl_sun;
+mod worked_errors;
 mod worked_examples;
