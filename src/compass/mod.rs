@@ -3,3 +3,4 @@
 pub mod card;
 pub mod curve;
 pub mod field;
+pub mod sight;

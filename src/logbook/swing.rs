@@ -1,10 +1,11 @@
-//! Reading a swing: headings and deviations already worked out.
+//! Reading a swing: headings with the deviation on each, or with the bearing that shows it.
 
 use super::figures::{read_day, read_deviation};
 use super::table::{Column, Row, Table};
 use crate::angle::text::{read_direction, read_latitude, read_longitude};
-use crate::angle::{CompassBearing, MagneticBearing, Position};
+use crate::angle::{CompassBearing, MagneticBearing, Position, TrueBearing};
 use crate::compass::curve::{Reading, Turn};
+use crate::compass::sight::Sighted;
 use crate::error::{BadValue, Result};
 use crate::time::UtcInstant;
 
@@ -28,12 +29,31 @@ pub struct SwingRow {
     pub taken: Option<(Position, UtcInstant)>,
 }
 
+/// A row of a swing with a bearing, whose deviation is not worked out yet.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct SightRow {
+    /// Data row, from 1.
+    pub number: usize,
+    /// Ship's head by the compass.
+    pub heading: CompassBearing,
+    /// Which way the ship was turning, where it was noted.
+    pub turn: Option<Turn>,
+    /// What the bearing was taken of.
+    pub sighted: Sighted,
+    /// The bearing by the compass.
+    pub bearing: CompassBearing,
+    /// Where and when, where the row says so.
+    pub taken: Option<(Position, UtcInstant)>,
+}
+
 /// A swing as read.
 #[derive(Debug, Clone, Default)]
 pub struct Swing {
-    /// Rows that can be used.
+    /// Rows with a deviation.
     pub rows: Vec<SwingRow>,
-    /// Rows that cannot.
+    /// Rows with a bearing.
+    pub sights: Vec<SightRow>,
+    /// Rows that cannot be used.
     pub bad_rows: Vec<BadRow>,
 }
 
@@ -49,9 +69,14 @@ struct Columns {
     lat: Column,
     lon: Column,
     utc: Column,
+    body: Column,
+    charted_bearing: Column,
+    compass_bearing: Column,
 }
 
-/// Reads `compass_heading` (or `magnetic_heading`), `deviation` and, where noted, `turn`, and `lat`, `lon`, `utc`.
+/// Reads `compass_heading` (or `magnetic_heading`) and `deviation`; or `compass_heading`, `compass_bearing` and `body` or `charted_bearing`.
+///
+/// Where noted, `turn`, and `lat`, `lon`, `utc`. Where deviations stand there, bearings are not read.
 ///
 /// `name` is what messages call the file.
 ///
@@ -67,18 +92,27 @@ pub fn read_swing(name: &str, bytes: &[u8]) -> Result<Swing> {
         lat: table.column("lat"),
         lon: table.column("lon"),
         utc: table.column("utc"),
+        body: table.column("body"),
+        charted_bearing: table.column("charted_bearing"),
+        compass_bearing: table.column("compass_bearing"),
     };
-    if !columns.deviation.is_there() || columns.compass_heading.is_there() == columns.magnetic_heading.is_there() {
+    let worked_out = columns.deviation.is_there() && columns.compass_heading.is_there() != columns.magnetic_heading.is_there();
+    let sighted = columns.compass_heading.is_there() && columns.compass_bearing.is_there();
+    if !worked_out && !sighted {
         return Err(table.unusable(format!(
-            "a swing has compass_heading and deviation, or the columns of an observation; the columns are {}",
+            "a swing has compass_heading and deviation, or compass_heading, compass_bearing and body or charted_bearing; the columns are {}",
             table.columns()
         )));
     }
     let mut swing = Swing::default();
     for row in &table.rows {
-        match columns.read(row) {
-            Ok(read) => swing.rows.push(read),
-            Err((column, bad)) => swing.bad_rows.push(BadRow { number: row.number, why: format!("{column}: {bad}") }),
+        let read = if worked_out {
+            columns.read(row).map(|read| swing.rows.push(read))
+        } else {
+            columns.read_sight(row).map(|read| swing.sights.push(read))
+        };
+        if let Err((column, bad)) = read {
+            swing.bad_rows.push(BadRow { number: row.number, why: format!("{column}: {bad}") });
         }
     }
     Ok(swing)
@@ -97,6 +131,22 @@ impl Columns {
         Ok(SwingRow { number: row.number, reading: Reading { heading, deviation, turn }, taken: self.taken(row)? })
     }
 
+    fn read_sight(&self, row: &Row) -> std::result::Result<SightRow, InColumn> {
+        let direction = |name: &'static str, column| read_direction(row.cell(column)).map(|r| r.value).map_err(|bad| (name, bad));
+        let sighted = match (row.cell(self.charted_bearing), row.cell(self.body)) {
+            ("", body) => read_body(body).map_err(|bad| ("body", bad))?,
+            _ => Sighted::Mark(TrueBearing::wrapping_deg(direction("charted_bearing", self.charted_bearing)?)),
+        };
+        Ok(SightRow {
+            number: row.number,
+            heading: CompassBearing::wrapping_deg(direction("compass_heading", self.compass_heading)?),
+            turn: read_turn(row.cell(self.turn)).map_err(|bad| ("turn", bad))?,
+            sighted,
+            bearing: CompassBearing::wrapping_deg(direction("compass_bearing", self.compass_bearing)?),
+            taken: self.taken(row)?,
+        })
+    }
+
     /// Where and when: all three cells, or none.
     fn taken(&self, row: &Row) -> std::result::Result<Option<(Position, UtcInstant)>, InColumn> {
         let (lat, lon, utc) = (row.cell(self.lat), row.cell(self.lon), row.cell(self.utc));
@@ -108,6 +158,10 @@ impl Columns {
         let utc = read_day(utc).map_err(|bad| ("utc", bad))?;
         Ok(Some((Position { lat, lon }, utc)))
     }
+}
+
+fn read_body(text: &str) -> std::result::Result<Sighted, BadValue> {
+    if text.eq_ignore_ascii_case("sun") { Ok(Sighted::Sun) } else { Err(BadValue::new(text, "Sun, or a charted_bearing")) }
 }
 
 /// Which way the ship was turning; blank where not noted.
