@@ -1,10 +1,15 @@
 //! One file a command; each sees only the public library.
 
+mod amplitude;
+mod azimuth;
 mod exit;
+mod instruments;
+mod one_row;
 mod output;
 mod read;
 mod swing;
 mod variation;
+mod when_where;
 
 use clap::{Parser, Subcommand};
 use exit::Exit;
@@ -23,6 +28,8 @@ struct Cli {
 
 #[derive(Subcommand)]
 enum Command {
+    Azimuth(azimuth::Args),
+    Amplitude(amplitude::Args),
     /// A deviation curve from the deviations of a swing
     Swing(swing::Args),
     /// Variation and the earth's field at a place and date
@@ -50,6 +57,8 @@ pub fn main() -> ExitCode {
 
 fn run(command: Command) -> shadowpin::error::Result<Exit> {
     match command {
+        Command::Azimuth(args) => azimuth::run(args),
+        Command::Amplitude(args) => amplitude::run(args),
         Command::Swing(args) => swing::run(args),
         Command::Variation(args) => variation::run(args),
     }

@@ -9,12 +9,13 @@ use shadowpin::angle::{CompassBearing, Position};
 use shadowpin::compass::curve::latitude::{self, MagneticPlace};
 use shadowpin::compass::curve::{Curve, NoCurve, Reading, fit};
 use shadowpin::compass::field::{self, Field};
-use shadowpin::compass::sight::{self, Sighted};
+use shadowpin::compass::{Place, Target, work};
 use shadowpin::error::{Error, NoAnswer, Result};
+use shadowpin::limits::Limits;
 use shadowpin::logbook::swing::{BadRow, SightRow, Swing, SwingRow, read_swing};
 use shadowpin::notice::Notice;
 use shadowpin::report::swing::{Elsewhere, Particulars, SwingReport, headings, table_of};
-use shadowpin::time::UtcInstant;
+use shadowpin::time::{Moment, UtcInstant};
 use std::path::PathBuf;
 
 /// Coefficients A to E with their uncertainty, the fit, and a table of the deviations, from the deviations on five headings or more.
@@ -152,13 +153,21 @@ fn work_out(swing: &mut Swing, by_option: Option<(Position, UtcInstant)>) {
 }
 
 fn deviation_of(sight: &SightRow, by_option: Option<(Position, UtcInstant)>) -> std::result::Result<SwingRow, String> {
-    // A body moves on: the time of its bearing is its own.
-    let taken = if sight.sighted == Sighted::Sun { sight.taken } else { sight.taken.or(by_option) };
-    let (position, utc) = taken.ok_or("no place and time: lat, lon and utc, or for a mark --lat, --lon and --utc")?;
-    let field = field::field(position, utc, 0.0).map_err(|none| none.to_string())?;
-    let deviation = sight::deviation(sight.sighted, sight.bearing, position, utc, field.variation).map_err(|none| none.to_string())?;
+    let mut observation = sight.observation;
+    // A mark stays where it is; a body moves on, and the time of its bearing is its own.
+    if let (Target::Mark { .. }, Some((position, utc))) = (observation.target, by_option) {
+        observation.place = observation.place.or(Some(Place { position, step_deg: 0.0 }));
+        observation.moment = observation.moment.or(Some(Moment { utc, step_s: 0.0 }));
+    }
+    let (Some(place), Some(moment)) = (observation.place, observation.moment) else {
+        return Err("no place and time: lat, lon and utc, or for a mark --lat, --lon and --utc".to_owned());
+    };
+    let worked = work(&observation, None, &Limits::default());
+    let none =
+        || worked.no_azimuth.map_or_else(|| "no variation: the field models do not reach that date".to_owned(), |why| why.to_string());
+    let deviation = worked.deviation.ok_or_else(none)?.value;
     let reading = Reading { heading: sight.heading, deviation, turn: sight.turn };
-    Ok(SwingRow { number: sight.number, reading, taken: Some((position, utc)) })
+    Ok(SwingRow { number: sight.number, reading, taken: Some((place.position, moment.utc)) })
 }
 
 /// Why there is no curve, with the first row that could not be used, which may be the reason.

@@ -5,9 +5,11 @@ use super::table::{Column, Row, Table};
 use crate::angle::text::{read_direction, read_latitude, read_longitude};
 use crate::angle::{CompassBearing, MagneticBearing, Position, TrueBearing};
 use crate::compass::curve::{Reading, Turn};
-use crate::compass::sight::Sighted;
+use crate::compass::{Observation, Place, Target};
 use crate::error::{BadValue, Result};
+use crate::sky::Body;
 use crate::time::UtcInstant;
+use crate::time::text::read_utc;
 
 /// A row that cannot be used, with the reason.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -34,16 +36,12 @@ pub struct SwingRow {
 pub struct SightRow {
     /// Data row, from 1.
     pub number: usize,
+    /// The bearing, of what, and where and when as far as the row says so.
+    pub observation: Observation,
     /// Ship's head by the compass.
     pub heading: CompassBearing,
     /// Which way the ship was turning, where it was noted.
     pub turn: Option<Turn>,
-    /// What the bearing was taken of.
-    pub sighted: Sighted,
-    /// The bearing by the compass.
-    pub bearing: CompassBearing,
-    /// Where and when, where the row says so.
-    pub taken: Option<(Position, UtcInstant)>,
 }
 
 /// A swing as read.
@@ -132,36 +130,46 @@ impl Columns {
     }
 
     fn read_sight(&self, row: &Row) -> std::result::Result<SightRow, InColumn> {
-        let direction = |name: &'static str, column| read_direction(row.cell(column)).map(|r| r.value).map_err(|bad| (name, bad));
-        let sighted = match (row.cell(self.charted_bearing), row.cell(self.body)) {
-            ("", body) => read_body(body).map_err(|bad| ("body", bad))?,
-            _ => Sighted::Mark(TrueBearing::wrapping_deg(direction("charted_bearing", self.charted_bearing)?)),
+        let direction = |name: &'static str, column| read_direction(row.cell(column)).map_err(|bad| (name, bad));
+        let compass = |name, column| direction(name, column).map(|reading| reading.map(CompassBearing::wrapping_deg));
+        let target = match (row.cell(self.charted_bearing), row.cell(self.body)) {
+            ("", "") => return Err(("body", BadValue::new("", "a body, or a charted_bearing"))),
+            ("", body) => Target::Body(Body::from_name(body).map_err(|bad| ("body", bad))?),
+            _ => {
+                let charted = direction("charted_bearing", self.charted_bearing)?;
+                Target::Mark { charted: TrueBearing::wrapping_deg(charted.value), step_deg: charted.step_deg }
+            }
         };
-        Ok(SightRow {
-            number: row.number,
-            heading: CompassBearing::wrapping_deg(direction("compass_heading", self.compass_heading)?),
-            turn: read_turn(row.cell(self.turn)).map_err(|bad| ("turn", bad))?,
-            sighted,
-            bearing: CompassBearing::wrapping_deg(direction("compass_bearing", self.compass_bearing)?),
-            taken: self.taken(row)?,
-        })
+        let heading = compass("compass_heading", self.compass_heading)?;
+        let mut observation = Observation::of(target);
+        observation.compass_heading = Some(heading);
+        observation.compass_bearing = Some(compass("compass_bearing", self.compass_bearing)?);
+        if !row.cell(self.utc).is_empty() {
+            observation.moment = Some(read_utc(row.cell(self.utc)).map_err(|bad| ("utc", bad))?);
+        }
+        observation.place = self.place(row)?;
+        let turn = read_turn(row.cell(self.turn)).map_err(|bad| ("turn", bad))?;
+        Ok(SightRow { number: row.number, observation, heading: heading.value, turn })
     }
 
-    /// Where and when: all three cells, or none.
-    fn taken(&self, row: &Row) -> std::result::Result<Option<(Position, UtcInstant)>, InColumn> {
-        let (lat, lon, utc) = (row.cell(self.lat), row.cell(self.lon), row.cell(self.utc));
-        if [lat, lon, utc].contains(&"") {
+    /// Both cells, or none.
+    fn place(&self, row: &Row) -> std::result::Result<Option<Place>, InColumn> {
+        let (lat, lon) = (row.cell(self.lat), row.cell(self.lon));
+        if lat.is_empty() && lon.is_empty() {
             return Ok(None);
         }
-        let lat = read_latitude(lat).map_err(|bad| ("lat", bad))?.value;
-        let lon = read_longitude(lon).map_err(|bad| ("lon", bad))?.value;
-        let utc = read_day(utc).map_err(|bad| ("utc", bad))?;
-        Ok(Some((Position { lat, lon }, utc)))
+        let lat = read_latitude(lat).map_err(|bad| ("lat", bad))?;
+        let lon = read_longitude(lon).map_err(|bad| ("lon", bad))?;
+        Ok(Some(Place { position: Position { lat: lat.value, lon: lon.value }, step_deg: lat.step_deg.max(lon.step_deg) }))
     }
-}
 
-fn read_body(text: &str) -> std::result::Result<Sighted, BadValue> {
-    if text.eq_ignore_ascii_case("sun") { Ok(Sighted::Sun) } else { Err(BadValue::new(text, "Sun, or a charted_bearing")) }
+    /// Where and when, where both are there.
+    fn taken(&self, row: &Row) -> std::result::Result<Option<(Position, UtcInstant)>, InColumn> {
+        let place = self.place(row)?;
+        let utc = row.cell(self.utc);
+        let day = if utc.is_empty() { None } else { Some(read_day(utc).map_err(|bad| ("utc", bad))?) };
+        Ok(place.map(|place| place.position).zip(day))
+    }
 }
 
 /// Which way the ship was turning; blank where not noted.

@@ -1,5 +1,11 @@
-//! Results as rows and text.
+//! Results as text, rows and pictures: content as data in, bytes out. Nothing is computed anew here.
 
+pub mod amplitude;
+pub mod azimuth;
+mod column;
 mod figure;
+pub mod fixed;
+pub mod rows;
 pub mod swing;
 pub mod variation;
+mod words;

@@ -4,7 +4,7 @@ mod body;
 pub mod earth;
 pub mod sun;
 
-pub use body::{Body, Planet};
+pub use body::{Body, Planet, Star};
 pub use earth::aries_gha_deg;
 
 /// The direction of a body's centre as seen from the centre of the earth: apparent place, true equator and equinox of date.
@@ -18,4 +18,8 @@ pub struct ApparentPlace {
     pub horizontal_parallax_deg: f64,
     /// Apparent semidiameter, degrees; 0 for a star or a planet.
     pub semidiameter_deg: f64,
+}
+/// The apparent place of the sun.
+pub fn apparent_place(_body: Body, utc: crate::time::UtcInstant) -> ApparentPlace {
+    sun::apparent_place(utc)
 }

@@ -3,7 +3,6 @@
 
 use super::file;
 use shadowpin::angle::{CompassBearing, GyroBearing, Latitude, Position, TrueBearing, Variation, wrap_180_deg};
-use shadowpin::compass::sight::{self, Sighted};
 use shadowpin::horizon::{
     AmplitudeAnswer, RisingOrSetting, amplitude_at_altitude, dip_deg, horizontal, parallactic_angle_deg, refraction_from_apparent_deg,
     refraction_from_true_deg, triangle,
@@ -99,9 +98,6 @@ fn sun_azimuth_from_time_to_compass_error() {
         let compass_error = seen.azimuth - CompassBearing::wrapping_deg(observed);
         close("compass error", compass_error.deg(), error, 0.06);
         close("deviation", (compass_error - Variation::wrapping_deg(variation)).deg(), deviation, 0.06);
-        let (bearing, variation) = (CompassBearing::wrapping_deg(observed), Variation::wrapping_deg(variation));
-        let here = Position::from_deg(place.0, place.1).unwrap();
-        close("in one", sight::deviation(Sighted::Sun, bearing, here, utc(time), variation).unwrap().deg(), deviation, 0.06);
     }
 }
 
