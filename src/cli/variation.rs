@@ -3,7 +3,7 @@
 use super::exit::Exit;
 use super::output::{Format, OutputArgs};
 use super::read;
-use shadowpin::compass::field::{self, HEIGHTS_KM};
+use shadowpin::compass::field;
 use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::report::variation;
 
@@ -32,10 +32,6 @@ pub struct Args {
 
 pub fn run(args: Args) -> Result<Exit> {
     let position = read::position(("--lat", &args.lat), ("--lon", &args.lon))?;
-    if !HEIGHTS_KM.contains(&args.height_km) {
-        let bad = BadValue::new(&args.height_km.to_string(), format!("kilometres, {} to {}", HEIGHTS_KM.start(), HEIGHTS_KM.end()));
-        return Err(Error::Option { what: "--height-km".to_owned(), bad });
-    }
     let field = match (&args.year, &args.utc) {
         (Some(year), _) => {
             let bad = || Error::Option { what: "--year".to_owned(), bad: BadValue::new(year, "a decimal year as 2026.5") };

@@ -136,6 +136,8 @@ fn clean_swings_lose_no_reading_and_u_holds() {
         assert!(tally.swings >= 390);
         assert!(tally.swings_with_wrongly_aside * 100 <= 2 * tally.swings, "{count} {sigma}: {tally:?}");
         assert!(tally.share_3u() >= 0.98, "{count} {sigma}: {tally:?}");
+        let share_2u = tally.inside_2u as f64 / tally.coefficients as f64;
+        assert!((0.93..=0.998).contains(&share_2u), "{count} {sigma}: {share_2u}");
     }
 }
 
