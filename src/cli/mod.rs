@@ -2,6 +2,7 @@
 
 mod amplitude;
 mod azimuth;
+mod card;
 mod exit;
 mod instruments;
 mod one_row;

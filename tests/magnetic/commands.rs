@@ -302,3 +302,47 @@ fn a_file_that_is_no_swing_is_refused_in_words() {
     assert!(text(&out.stderr).ends_with("the columns are heading, dev\n"), "{}", text(&out.stderr));
     assert_eq!(run(&["swing", "no-such-file.csv"], "").status.code(), Some(2));
 }
+
+#[test]
+fn the_card_beside_an_azimuth() {
+    let path = std::env::temp_dir().join(format!("shadowpin-beside-{}.csv", std::process::id()));
+    let with_card = |card: &str, more: &[&str]| {
+        std::fs::write(&path, card).unwrap();
+        let fixed = [
+            "azimuth",
+            "--utc",
+            "2026-06-14T06:12:00Z",
+            "--lat",
+            "36-05.8S",
+            "--lon",
+            "130-33.6E",
+            "--body",
+            "sun",
+            "--compass",
+            "316",
+            "--compass-heading",
+            "22.5",
+            "--card",
+            path.to_str().unwrap(),
+        ];
+        run(&[&fixed, more].concat(), "")
+    };
+    // B 4, C 2 on eight headings: by the curve 4 sin 22.5 + 2 cos 22.5 = 3.38; half way between 2.0 and 4.2 in a straight line 3.1.
+    let card = "compass_heading,deviation\n0,2.0E\n45,4.2E\n90,4.0E\n135,1.4E\n180,2.0W\n225,4.2W\n270,4.0W\n315,1.4W\n";
+    let deviation = |more: &[&str]| {
+        let out = with_card(card, &[&["--format", "json"], more].concat());
+        let v: Value = serde_json::from_slice(&out.stdout).unwrap_or_else(|e| panic!("{e}: {}", text(&out.stderr)));
+        v["card_deviation"].as_f64().unwrap()
+    };
+    assert!((deviation(&[]) - 3.38).abs() < 0.03);
+    assert!((deviation(&["--card-as-given"]) - 3.1).abs() < 1e-9);
+    let words = text(&with_card(card, &[]).stdout);
+    assert!(words.contains("Card: deviation 3.4 E on heading 022.5 by its curve\nObserved by bearing less card: 5.6 W (u 0.8)"), "{words}");
+
+    let two = with_card("compass_heading,deviation,magnetic_compass\n0,1,standard\n0,2,steering\n", &[]);
+    assert_eq!(two.status.code(), Some(2));
+    assert!(text(&two.stderr).contains("it holds the cards of several compasses"), "{}", text(&two.stderr));
+    let later = with_card("compass_heading,deviation,valid_from\n0,1,2026-07-01\n", &[]);
+    assert!(text(&later.stderr).contains("no card in it was in force at that time"), "{}", text(&later.stderr));
+    std::fs::remove_file(&path).unwrap();
+}
