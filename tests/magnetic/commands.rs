@@ -337,7 +337,7 @@ fn the_card_beside_an_azimuth() {
     assert!((deviation(&[]) - 3.38).abs() < 0.03);
     assert!((deviation(&["--card-as-given"]) - 3.1).abs() < 1e-9);
     let words = text(&with_card(card, &[]).stdout);
-    assert!(words.contains("Card: deviation 3.4 E on heading 022.5 by its curve\nObserved by bearing less card: 5.6 W (u 0.8)"), "{words}");
+    assert!(words.contains("Card: deviation 3.4 E on heading 022.5 by its curve\nObserved by bearing less card: 5.5 W (u 0.8)"), "{words}");
 
     let two = with_card("compass_heading,deviation,magnetic_compass\n0,1,standard\n0,2,steering\n", &[]);
     assert_eq!(two.status.code(), Some(2));
