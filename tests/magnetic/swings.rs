@@ -307,7 +307,7 @@ fn past_20_degrees_the_exact_form_is_taken() {
 #[test]
 fn many_rows_with_blunders() {
     let mut n = Numbers::new(11);
-    let (mut rows, truth, _) = swing(&mut n, 2000, 0.8, &[]);
+    let (mut rows, truth, _) = swing(&mut n, 2000, 0.8, &[]); // headings a fifth of a degree apart
     for row in rows.iter_mut().step_by(20) {
         row.deviation = Deviation::wrapping_deg(row.deviation.deg() + 15.0);
     }
