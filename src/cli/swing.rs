@@ -7,7 +7,7 @@ use clap::ValueEnum;
 use shadowpin::angle::text::read_direction;
 use shadowpin::angle::{CompassBearing, Position};
 use shadowpin::compass::curve::latitude::{self, MagneticPlace};
-use shadowpin::compass::curve::{Curve, NoCurve, Reading, fit};
+use shadowpin::compass::curve::{Curve, DeviationReading, NoCurve, fit};
 use shadowpin::compass::field::{self, Field};
 use shadowpin::compass::{Place, Target, work};
 use shadowpin::error::{Error, NoAnswer, Result};
@@ -98,7 +98,7 @@ pub fn run(args: Args) -> Result<Exit> {
     let mut swing = read_swing(&name, &bytes)?;
     let by_option = swung_at.zip(utc);
     work_out(&mut swing, by_option);
-    let readings: Vec<Reading> = swing.rows.iter().map(|row| row.reading).collect();
+    let readings: Vec<DeviationReading> = swing.rows.iter().map(|row| row.reading).collect();
     let curve = fit(&readings).map_err(|none| no_curve(name, none, &swing.bad_rows))?;
     let places = places(&swing.rows, by_option);
 
@@ -166,7 +166,7 @@ fn deviation_of(sight: &SightRow, by_option: Option<(Position, UtcInstant)>) -> 
     let none =
         || worked.no_azimuth.map_or_else(|| "no variation: the field models do not reach that date".to_owned(), |why| why.to_string());
     let deviation = worked.deviation.ok_or_else(none)?.value;
-    let reading = Reading { heading: sight.heading, deviation, turn: sight.turn };
+    let reading = DeviationReading { heading: sight.heading, deviation, turn: sight.turn };
     Ok(SwingRow { number: sight.number, reading, taken: Some((place.position, moment.utc)) })
 }
 

@@ -1,6 +1,6 @@
 //! The deviation card: heading to deviation, of one magnetic compass, from a date.
 
-use super::curve::{Curve, Reading, fit};
+use super::curve::{Curve, DeviationReading, fit};
 use crate::angle::{CompassBearing, Deviation, MagneticBearing, wrap_180_deg};
 use crate::notice::Notice;
 use crate::time::UtcInstant;
@@ -95,7 +95,8 @@ impl Card {
         if points.is_empty() {
             return Err(BadCard::Empty);
         }
-        let readings: Vec<Reading> = points.iter().map(|&(heading, deviation)| Reading { heading, deviation, turn: None }).collect();
+        let readings: Vec<DeviationReading> =
+            points.iter().map(|&(heading, deviation)| DeviationReading { heading, deviation, turn: None }).collect();
         let curve = fit(&readings).ok().filter(|curve| curve.u_deg().iter().all(Option::is_some));
         Ok(Self { of, points, curve })
     }

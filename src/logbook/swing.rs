@@ -4,7 +4,7 @@ use super::figures::{read_day, read_deviation};
 use super::table::{Column, Row, Table};
 use crate::angle::text::{read_direction, read_latitude, read_longitude};
 use crate::angle::{CompassBearing, MagneticBearing, Position, TrueBearing};
-use crate::compass::curve::{Reading, Turn};
+use crate::compass::curve::{DeviationReading, Turn};
 use crate::compass::{Observation, Place, Target};
 use crate::error::{BadValue, Result};
 use crate::sky::Body;
@@ -26,7 +26,7 @@ pub struct SwingRow {
     /// Data row, from 1.
     pub number: usize,
     /// Heading and deviation.
-    pub reading: Reading,
+    pub reading: DeviationReading,
     /// Where and when, where the row says so.
     pub taken: Option<(Position, UtcInstant)>,
 }
@@ -126,7 +126,7 @@ impl Columns {
             MagneticBearing::wrapping_deg(direction("magnetic_heading", self.magnetic_heading)?) - deviation
         };
         let turn = read_turn(row.cell(self.turn)).map_err(|bad| ("turn", bad))?;
-        Ok(SwingRow { number: row.number, reading: Reading { heading, deviation, turn }, taken: self.taken(row)? })
+        Ok(SwingRow { number: row.number, reading: DeviationReading { heading, deviation, turn }, taken: self.taken(row)? })
     }
 
     fn read_sight(&self, row: &Row) -> std::result::Result<SightRow, InColumn> {
