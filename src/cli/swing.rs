@@ -4,7 +4,7 @@ use super::exit::Exit;
 use super::output::{Format, OutputArgs};
 use super::read;
 use clap::ValueEnum;
-use shadowpin::angle::text::read_direction;
+use shadowpin::angle::text::{read_direction, write};
 use shadowpin::angle::{CompassBearing, Position};
 use shadowpin::compass::curve::latitude::{self, MagneticPlace};
 use shadowpin::compass::curve::{Curve, DeviationReading, NoCurve, fit};
@@ -27,7 +27,7 @@ pub struct Args {
     /// The swing; - for standard input
     file: PathBuf,
     /// Spacing of the table, degrees
-    #[arg(long, value_enum, default_value_t = Every::Fifteen)]
+    #[arg(long, value_name = "DEGREES", value_enum, default_value_t = Every::Fifteen)]
     every: Every,
     /// Deviation on this heading by compass too
     #[arg(long, value_name = "DEGREES")]
@@ -36,31 +36,31 @@ pub struct Args {
     #[arg(long, value_name = "FILE")]
     card_out: Option<PathBuf>,
     /// Vessel, for the table's head
-    #[arg(long, default_value = "")]
+    #[arg(long, value_name = "NAME", default_value = "", hide_default_value = true)]
     vessel: String,
     /// Magnetic compass, for the table's head
-    #[arg(long, default_value = "")]
+    #[arg(long, value_name = "NAME", default_value = "", hide_default_value = true)]
     compass: String,
-    /// Place in words, for the table's head
-    #[arg(long, default_value = "")]
+    /// Place in words, for the table's head; otherwise --lat and --lon
+    #[arg(long, value_name = "WORDS", default_value = "", hide_default_value = true)]
     place: String,
     /// Correctors as found, for the table's head
-    #[arg(long, default_value = "")]
+    #[arg(long, value_name = "WORDS", default_value = "", hide_default_value = true)]
     correctors: String,
-    /// Date and time of the swing, UTC
-    #[arg(long)]
+    /// Date, or date and time, of the swing, UTC
+    #[arg(long, value_name = "TIME")]
     utc: Option<String>,
     /// Latitude of the swing
-    #[arg(long, allow_hyphen_values = true, requires_all = ["lon", "utc"])]
+    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true, requires_all = ["lon", "utc"])]
     lat: Option<String>,
     /// Longitude of the swing
-    #[arg(long, allow_hyphen_values = true, requires = "lat")]
+    #[arg(long, value_name = "LONGITUDE", allow_hyphen_values = true, requires = "lat")]
     lon: Option<String>,
     /// The curve to expect at this latitude
-    #[arg(long, allow_hyphen_values = true, requires = "for_lon")]
+    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true, requires = "for_lon")]
     for_lat: Option<String>,
     /// The curve to expect at this longitude
-    #[arg(long, allow_hyphen_values = true, requires = "for_lat")]
+    #[arg(long, value_name = "LONGITUDE", allow_hyphen_values = true, requires = "for_lat")]
     for_lon: Option<String>,
     #[command(flatten)]
     output: OutputArgs,
@@ -104,8 +104,8 @@ pub fn run(args: Args) -> Result<Exit> {
 
     let first = swing.rows.iter().find_map(|row| row.taken).map(|(_, utc)| utc);
     let date = utc.or(first).map(|utc| utc.to_chrono().format("%Y-%m-%d").to_string()).unwrap_or_default();
-    let particulars =
-        Particulars { vessel: args.vessel, magnetic_compass: args.compass, date, place: args.place, correctors: args.correctors };
+    let place = if args.place.is_empty() { swung_at.map(write::position).unwrap_or_default() } else { args.place };
+    let particulars = Particulars { vessel: args.vessel, magnetic_compass: args.compass, date, place, correctors: args.correctors };
     let elsewhere = match (&args.for_lat, &args.for_lon) {
         (Some(lat), Some(lon)) => {
             let there = read::position(("--for-lat", lat), ("--for-lon", lon))?;
