@@ -65,8 +65,10 @@ pub struct Card {
     pub of: CardOf,
     /// Its figures by compass heading, in order round the compass.
     points: Vec<(CompassBearing, Deviation)>,
-    /// `None` where its headings are too few for one; not all of it may be determined.
+    /// `None` where its headings are too few for one.
     fitted: Option<Curve>,
+    /// Whether all of that curve is determined.
+    holds: bool,
 }
 
 impl Card {
@@ -98,7 +100,8 @@ impl Card {
         let readings: Vec<DeviationReading> =
             points.iter().map(|&(heading, deviation)| DeviationReading { heading, deviation, turn: None }).collect();
         let fitted = fit(&readings).ok();
-        Ok(Self { of, points, fitted })
+        let holds = fitted.as_ref().is_some_and(|curve| curve.u_deg().iter().all(Option::is_some));
+        Ok(Self { of, points, fitted, holds })
     }
 
     /// Its figures by compass heading, in order round the compass.
@@ -108,7 +111,7 @@ impl Card {
 
     /// The curve through it; `None` where its headings are too few, on too narrow an arc, or its figures too rough for one.
     pub fn curve(&self) -> Option<&Curve> {
-        self.fitted.as_ref().filter(|curve| curve.u_deg().iter().all(Option::is_some))
+        self.fitted.as_ref().filter(|_| self.holds)
     }
 
     /// The deviation on a heading by compass, by the card's five-coefficient curve; where it has none, as [`Card::as_given`].
@@ -141,12 +144,12 @@ impl Card {
                 notices.push(Notice::CardNotSmooth { residual_deg, heading_deg });
             }
             let a_deg = curve.coefficients.a;
-            if self.curve().is_some() && a_deg.abs() > CONSTANT_DEG {
+            if self.holds && a_deg.abs() > CONSTANT_DEG {
                 notices.push(Notice::CardConstant { a_deg });
             }
         }
         // Headings all round and yet no curve: the figures are too rough, which is said above.
-        if self.curve().is_none() && self.fitted.as_ref().is_none_or(|curve| !curve.unproven.is_empty()) {
+        if !self.holds && self.fitted.as_ref().is_none_or(|curve| !curve.unproven.is_empty()) {
             notices.push(Notice::CardSparse { headings: self.points.len() });
         }
         let largest_deg = self.points.iter().map(|(_, d)| d.deg().abs()).fold(0.0, f64::max);
