@@ -101,6 +101,16 @@ pub enum NoAnswer {
         /// Last decimal year answered.
         to: f64,
     },
+    /// The field is not answered at that height.
+    #[error("no field for a height of {height_km} km: {from} to {to} km above the ellipsoid are answered")]
+    Height {
+        /// Height asked for, kilometres above the ellipsoid.
+        height_km: f64,
+        /// Lowest answered.
+        from: f64,
+        /// Highest answered.
+        to: f64,
+    },
     /// The horizontal field is too weak for a compass to point.
     #[error("the horizontal field is {horizontal_nt:.0} nT: a magnetic compass does not point there")]
     WeakField {

@@ -287,7 +287,10 @@ impl fmt::Display for Notice {
             Self::CardReversed { observations } => {
                 write!(f, "{observations} observations give the card's deviations with the opposite sign: were east and west exchanged?")
             }
-            Self::CardSparse { headings } => write!(f, "the card has only {headings} headings: it is read in a straight line between them"),
+            Self::CardSparse { headings } => write!(
+                f,
+                "the card's {headings} headings are too few, or too close together, for a curve: it is read in a straight line between them"
+            ),
             Self::CardOld { age_months, limit_months } => write!(f, "the card is {age_months} months old, {limit_months} are allowed"),
         }
     }

@@ -2,6 +2,7 @@
 
 mod amplitude;
 mod azimuth;
+mod card;
 mod exit;
 mod files;
 mod instruments;

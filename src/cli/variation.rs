@@ -3,7 +3,7 @@
 use super::exit::Exit;
 use super::output::{Format, OutputArgs};
 use super::read;
-use shadowpin::compass::field::{self, HEIGHTS_KM};
+use shadowpin::compass::field;
 use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::report::variation;
 
@@ -11,20 +11,20 @@ use shadowpin::report::variation;
 #[derive(Debug, clap::Args)]
 #[command(after_help = "Example:\n  shadowpin variation --lat 36.096S --lon 174.335E --utc 2026-03-01T12:00Z")]
 pub struct Args {
-    /// Latitude
-    #[arg(long, allow_hyphen_values = true)]
+    /// Latitude, such as -36.096, 36-05.8S
+    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true)]
     lat: String,
-    /// Longitude
-    #[arg(long, allow_hyphen_values = true)]
+    /// Longitude, such as 174.335, 174-20.1E
+    #[arg(long, value_name = "LONGITUDE", allow_hyphen_values = true)]
     lon: String,
-    /// Date and time, UTC
-    #[arg(long, required_unless_present = "year", conflicts_with = "year")]
+    /// Date, or date and time, UTC
+    #[arg(long, value_name = "TIME", required_unless_present = "year", conflicts_with = "year")]
     utc: Option<String>,
     /// Decimal year, as 2026.5
-    #[arg(long)]
+    #[arg(long, value_name = "YEAR")]
     year: Option<String>,
     /// Height above the ellipsoid, kilometres
-    #[arg(long, default_value_t = 0.0, allow_hyphen_values = true)]
+    #[arg(long, value_name = "KILOMETRES", default_value_t = 0.0, allow_hyphen_values = true)]
     height_km: f64,
     #[command(flatten)]
     output: OutputArgs,
@@ -32,10 +32,6 @@ pub struct Args {
 
 pub fn run(args: Args) -> Result<Exit> {
     let position = read::position(("--lat", &args.lat), ("--lon", &args.lon))?;
-    if !HEIGHTS_KM.contains(&args.height_km) {
-        let bad = BadValue::new(&args.height_km.to_string(), format!("kilometres, {} to {}", HEIGHTS_KM.start(), HEIGHTS_KM.end()));
-        return Err(Error::Option { what: "--height-km".to_owned(), bad });
-    }
     let field = match (&args.year, &args.utc) {
         (Some(year), _) => {
             let bad = || Error::Option { what: "--year".to_owned(), bad: BadValue::new(year, "a decimal year as 2026.5") };

@@ -1,6 +1,6 @@
 //! The deviation card: heading to deviation, of one magnetic compass, from a date.
 
-use super::curve::{Curve, Reading, fit};
+use super::curve::{Curve, DeviationReading, fit};
 use crate::angle::{CompassBearing, Deviation, MagneticBearing, wrap_180_deg};
 use crate::notice::Notice;
 use crate::time::UtcInstant;
@@ -66,7 +66,9 @@ pub struct Card {
     /// Its figures by compass heading, in order round the compass.
     points: Vec<(CompassBearing, Deviation)>,
     /// `None` where its headings are too few for one.
-    curve: Option<Curve>,
+    fitted: Option<Curve>,
+    /// Whether all of that curve is determined.
+    holds: bool,
 }
 
 impl Card {
@@ -95,9 +97,11 @@ impl Card {
         if points.is_empty() {
             return Err(BadCard::Empty);
         }
-        let readings: Vec<Reading> = points.iter().map(|&(heading, deviation)| Reading { heading, deviation, turn: None }).collect();
-        let curve = fit(&readings).ok().filter(|curve| curve.u_deg().iter().all(Option::is_some));
-        Ok(Self { of, points, curve })
+        let readings: Vec<DeviationReading> =
+            points.iter().map(|&(heading, deviation)| DeviationReading { heading, deviation, turn: None }).collect();
+        let fitted = fit(&readings).ok();
+        let holds = fitted.as_ref().is_some_and(|curve| curve.u_deg().iter().all(Option::is_some));
+        Ok(Self { of, points, fitted, holds })
     }
 
     /// Its figures by compass heading, in order round the compass.
@@ -105,14 +109,14 @@ impl Card {
         &self.points
     }
 
-    /// The curve through it; `None` where its headings are too few, or on too narrow an arc, for one.
+    /// The curve through it; `None` where its headings are too few, on too narrow an arc, or its figures too rough for one.
     pub fn curve(&self) -> Option<&Curve> {
-        self.curve.as_ref()
+        self.fitted.as_ref().filter(|_| self.holds)
     }
 
     /// The deviation on a heading by compass, by the card's five-coefficient curve; where it has none, as [`Card::as_given`].
     pub fn deviation(&self, heading: CompassBearing) -> Deviation {
-        match &self.curve {
+        match self.curve() {
             Some(curve) => Deviation::wrapping_deg(curve.deviation_deg(heading)),
             None => self.as_given(heading),
         }
@@ -133,19 +137,20 @@ impl Card {
     /// The doubts that the card itself raises, and its age at the instant `at` against the `limit_months` allowed.
     pub fn notices(&self, at: Option<UtcInstant>, limit_months: u32) -> Vec<Notice> {
         let mut notices = Vec::new();
-        match &self.curve {
-            Some(curve) => {
-                let off = self.points.iter().map(|(h, d)| (h.deg(), wrap_180_deg(d.deg() - curve.deviation_deg(*h))));
-                let worst = off.max_by(|a, b| a.1.abs().total_cmp(&b.1.abs()));
-                if let Some((heading_deg, residual_deg)) = worst.filter(|(_, residual)| residual.abs() > SMOOTH_DEG) {
-                    notices.push(Notice::CardNotSmooth { residual_deg, heading_deg });
-                }
-                let a_deg = curve.coefficients.a;
-                if a_deg.abs() > CONSTANT_DEG {
-                    notices.push(Notice::CardConstant { a_deg });
-                }
+        if let Some(curve) = &self.fitted {
+            let off = self.points.iter().map(|(h, d)| (h.deg(), wrap_180_deg(d.deg() - curve.deviation_deg(*h))));
+            let worst = off.max_by(|a, b| a.1.abs().total_cmp(&b.1.abs()));
+            if let Some((heading_deg, residual_deg)) = worst.filter(|(_, residual)| residual.abs() > SMOOTH_DEG) {
+                notices.push(Notice::CardNotSmooth { residual_deg, heading_deg });
             }
-            None => notices.push(Notice::CardSparse { headings: self.points.len() }),
+            let a_deg = curve.coefficients.a;
+            if self.holds && a_deg.abs() > CONSTANT_DEG {
+                notices.push(Notice::CardConstant { a_deg });
+            }
+        }
+        // Headings all round and yet no curve: the figures are too rough, which is said above.
+        if !self.holds && self.fitted.as_ref().is_none_or(|curve| !curve.unproven.is_empty()) {
+            notices.push(Notice::CardSparse { headings: self.points.len() });
         }
         let largest_deg = self.points.iter().map(|(_, d)| d.deg().abs()).fold(0.0, f64::max);
         if largest_deg <= NEAR_NIL_DEG {

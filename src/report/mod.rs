@@ -2,6 +2,7 @@
 
 pub mod amplitude;
 pub mod azimuth;
+pub mod card;
 mod column;
 mod figure;
 pub mod fixed;

@@ -73,6 +73,8 @@ pub struct SwingReport<'a> {
     pub asked: Option<(f64, Option<Estimate>)>,
     /// The curve at another place.
     pub elsewhere: Option<Elsewhere>,
+    /// What the earth's field says of a compass where the readings were taken.
+    pub of_field: Vec<Notice>,
     /// Whether the readings come from different magnetic latitudes, so that one curve does not hold for all.
     pub latitudes_mixed: bool,
 }
@@ -93,7 +95,7 @@ impl SwingReport<'_> {
         let mixed = self.latitudes_mixed.then_some(Notice::LatitudesMixed);
         // Mixed latitudes explain a large scatter: it is no sign of wrong readings.
         let of_curve = self.curve.notices.iter().filter(|n| !(self.latitudes_mixed && matches!(n, Notice::LargeScatter { .. })));
-        of_curve.copied().chain(mixed).chain(untold).collect()
+        of_curve.chain(&self.of_field).copied().chain(mixed).chain(untold).collect()
     }
 
     /// For a person.

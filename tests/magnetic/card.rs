@@ -80,6 +80,13 @@ fn doubts() {
     assert_eq!(ids(&sparse), ["card-sparse"]);
     assert!(sparse.curve().is_none());
     assert_eq!(sparse.deviation(compass(22.5)), sparse.as_given(compass(22.5)));
+    // Figures that no curve runs through, all round.
+    let wild: Vec<(f64, Deviation)> = (0..8)
+        .map(|i| (45.0 * f64::from(i), Deviation::wrapping_deg([9.0, -11.0, 4.0, 14.0, -9.0, 12.0, -13.0, 5.0][i as usize])))
+        .collect();
+    let wild = Card::new(CardOf::default(), EnteredBy::CompassHeading, &wild).unwrap();
+    assert_eq!(ids(&wild), ["card-not-smooth"]);
+    assert_eq!(wild.deviation(compass(22.5)), wild.as_given(compass(22.5)));
 }
 
 #[test]

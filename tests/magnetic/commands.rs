@@ -240,3 +240,109 @@ fn elsewhere_from_two_latitudes() {
     let words = text(&run(&["swing", "-", "--for-lat", "1-15N", "--for-lon", "103-50E"], &rows).stdout);
     assert!(words.contains("B, permanent part") && words.contains("Deviation to expect there"), "{words}");
 }
+
+/// Bearings of the sun on twelve headings, and of a mark, made from known coefficients, give these back.
+#[test]
+fn swing_from_bearings() {
+    use shadowpin::angle::{CompassBearing, Deviation, Position, TrueBearing};
+    use shadowpin::compass::curve::Coefficients;
+    use shadowpin::compass::field::field;
+    use shadowpin::horizon::horizontal;
+    use shadowpin::sky::sun;
+    use shadowpin::time::text::read_utc;
+
+    let made = Coefficients { a: -0.5, b: 6.0, c: -3.0, d: 1.5, e: 0.5 };
+    let here = Position::from_deg(-36.0, 174.9).unwrap();
+    let (mut of_sun, mut of_mark) = (
+        String::from("utc,lat,lon,body,compass_heading,compass_bearing,turn\n"),
+        String::from("compass_heading,charted_bearing,compass_bearing\n"),
+    );
+    for i in 0..12 {
+        let (time, heading) = (format!("2026-03-01T20:{:02}:30Z", 4 * i), CompassBearing::wrapping_deg(30.0 * f64::from(i)));
+        let utc = read_utc(&time).unwrap().utc;
+        let variation = field(here, utc, 0.0).unwrap().variation;
+        // Compass bearing to expect = true - (variation + deviation).
+        let bearing = |seen: TrueBearing| seen - (variation + Deviation::wrapping_deg(made.deviation_deg(heading)));
+        let sun = bearing(horizontal(&sun::apparent_place(utc), here).unwrap().azimuth).deg();
+        of_sun += &format!("{time},36-00.0S,174-54.0E,Sun,{},{sun:.1},clockwise\n", heading.deg());
+        let mark = bearing(TrueBearing::wrapping_deg(2.0)).deg();
+        of_mark += &format!("{},002,{mark:.1}\n", heading.deg());
+    }
+    let coefficients = |args: &[&str], input: &str| {
+        let out = run(&[&["swing", "-", "--format", "json"], args].concat(), input);
+        let v: Value = serde_json::from_slice(&out.stdout).unwrap_or_else(|e| panic!("{e}: {}", text(&out.stderr)));
+        assert_eq!((out.status.code(), v["set_aside"].as_array().unwrap().len()), (Some(0), 0));
+        ["A", "B", "C", "D", "E"].map(|name| v["coefficients"][name].as_f64().unwrap())
+    };
+    let by_sun = coefficients(&[], &of_sun);
+    let by_mark = coefficients(&["--lat", "36S", "--lon", "174.9E", "--utc", "2026-03-01T20:20Z"], &of_mark);
+    for ((by_sun, by_mark), made) in by_sun.into_iter().zip(by_mark).zip(made.to_array()) {
+        // Bearings written to 0.1.
+        assert!((by_sun - made).abs() < 0.05 && (by_mark - made).abs() < 0.05, "{by_sun} {by_mark} {made}");
+    }
+
+    // A mark with no place: every row is a problem, and there is no curve.
+    let out = run(&["swing", "-"], &of_mark);
+    assert_eq!(out.status.code(), Some(2));
+    assert_eq!(
+        text(&out.stderr),
+        "shadowpin: standard input: deviations on 0 different headings: five coefficients need at least 5, and 8 all round to be trusted; \
+         12 rows could not be used, the first is row 1: no place and time: lat, lon and utc, or for a mark --lat, --lon and --utc\n"
+    );
+    // One row of a body that is not known.
+    let out = run(&["swing", "-"], &of_sun.replacen("Sun", "Sum", 1));
+    assert_eq!(out.status.code(), Some(3));
+    assert!(text(&out.stdout).contains("      1   not used: body: \"Sum\""));
+}
+
+#[test]
+fn a_file_that_is_no_swing_is_refused_in_words() {
+    let out = run(&["swing", "-"], "heading,dev\n1,2\n");
+    assert_eq!(out.status.code(), Some(2));
+    assert!(text(&out.stderr).ends_with("the columns are heading, dev\n"), "{}", text(&out.stderr));
+    assert_eq!(run(&["swing", "no-such-file.csv"], "").status.code(), Some(2));
+}
+
+#[test]
+fn the_card_beside_an_azimuth() {
+    let path = std::env::temp_dir().join(format!("shadowpin-beside-{}.csv", std::process::id()));
+    let with_card = |card: &str, more: &[&str]| {
+        std::fs::write(&path, card).unwrap();
+        let fixed = [
+            "azimuth",
+            "--utc",
+            "2026-06-14T06:12:00Z",
+            "--lat",
+            "36-05.8S",
+            "--lon",
+            "130-33.6E",
+            "--body",
+            "sun",
+            "--compass",
+            "316",
+            "--compass-heading",
+            "22.5",
+            "--card",
+            path.to_str().unwrap(),
+        ];
+        run(&[&fixed, more].concat(), "")
+    };
+    // B 4, C 2 on eight headings: by the curve 4 sin 22.5 + 2 cos 22.5 = 3.38; half way between 2.0 and 4.2 in a straight line 3.1.
+    let card = "compass_heading,deviation\n0,2.0E\n45,4.2E\n90,4.0E\n135,1.4E\n180,2.0W\n225,4.2W\n270,4.0W\n315,1.4W\n";
+    let deviation = |more: &[&str]| {
+        let out = with_card(card, &[&["--format", "json"], more].concat());
+        let v: Value = serde_json::from_slice(&out.stdout).unwrap_or_else(|e| panic!("{e}: {}", text(&out.stderr)));
+        v["card_deviation"].as_f64().unwrap()
+    };
+    assert!((deviation(&[]) - 3.38).abs() < 0.03);
+    assert!((deviation(&["--card-as-given"]) - 3.1).abs() < 1e-9);
+    let words = text(&with_card(card, &[]).stdout);
+    assert!(words.contains("Card: deviation 3.4 E on heading 022.5 by its curve\nObserved by bearing less card: 5.5 W (u 0.8)"), "{words}");
+
+    let two = with_card("compass_heading,deviation,magnetic_compass\n0,1,standard\n0,2,steering\n", &[]);
+    assert_eq!(two.status.code(), Some(2));
+    assert!(text(&two.stderr).contains("it holds the cards of several compasses"), "{}", text(&two.stderr));
+    let later = with_card("compass_heading,deviation,valid_from\n0,1,2026-07-01\n", &[]);
+    assert!(text(&later.stderr).contains("no card in it was in force at that time"), "{}", text(&later.stderr));
+    std::fs::remove_file(&path).unwrap();
+}

@@ -3,7 +3,7 @@
 use super::swings::{Numbers, reading};
 use shadowpin::angle::{CompassBearing, Position};
 use shadowpin::compass::curve::latitude::{MagneticPlace, bounds, fit_by_latitude};
-use shadowpin::compass::curve::{Coefficients, Reading, fit};
+use shadowpin::compass::curve::{Coefficients, DeviationReading, fit};
 use shadowpin::compass::field::field_in_year;
 
 fn place(lat: f64, lon: f64) -> MagneticPlace {
@@ -21,7 +21,7 @@ fn truth(at: MagneticPlace) -> Coefficients {
 }
 
 /// Readings on `count` headings at each place, with noise.
-fn observed(places: &[MagneticPlace], count: usize, seed: u64) -> Vec<(Reading, MagneticPlace)> {
+fn observed(places: &[MagneticPlace], count: usize, seed: u64) -> Vec<(DeviationReading, MagneticPlace)> {
     let mut n = Numbers::new(seed);
     let mut all = Vec::new();
     for at in places {
@@ -41,7 +41,7 @@ fn a_compass_corrected_in_the_north_is_not_in_the_south() {
     let at = |lat: f64| MagneticPlace { horizontal_nt: 30_000.0 * lat.to_radians().cos(), tan_inclination: 2.0 * lat.to_radians().tan() };
     let north = at(50.0);
     let [permanent, induced] = [4.0, -4.0].map(|b| {
-        let rows: Vec<Reading> = (0..8).map(|i| 45.0 * f64::from(i)).map(|h| reading(h, b * h.to_radians().sin())).collect();
+        let rows: Vec<DeviationReading> = (0..8).map(|i| 45.0 * f64::from(i)).map(|h| reading(h, b * h.to_radians().sin())).collect();
         fit(&rows).unwrap()
     });
     let elsewhere = |to: MagneticPlace| bounds(&permanent, north, to)[0].unwrap().b + bounds(&induced, north, to)[1].unwrap().b;

@@ -1,13 +1,13 @@
 //! Handbook of Magnetic Compass Adjustment (formerly NGA Pub. 226), art. 501: the worked example on eight headings.
 
 use shadowpin::angle::{CompassBearing, Deviation};
-use shadowpin::compass::curve::{Reading, fit};
+use shadowpin::compass::curve::{DeviationReading, fit};
 
-fn readings() -> Vec<Reading> {
+fn readings() -> Vec<DeviationReading> {
     let text = super::file("deviation_pub226.csv");
     let reading = |line: &str| {
         let (heading, deviation) = line.split_once(',').unwrap();
-        Reading {
+        DeviationReading {
             heading: CompassBearing::wrapping_deg(heading.parse().unwrap()),
             deviation: Deviation::wrapping_deg(deviation.parse().unwrap()),
             turn: None,

@@ -16,8 +16,10 @@ const READING_WEIGHT: f64 = 8.0;
 const FALSE_ALARM: f64 = 3e-3;
 /// Another row in its place must leave more than this many times the variance of a reading (our own: three sigma).
 const TOSS_UP: f64 = 9.0;
-/// Rows beyond what the unknowns need that must be left.
-const ROWS_TO_SPARE: usize = 1;
+/// Rows beyond what the unknowns need, for each blunder: with fewer, another set of as many rows explains the same residuals.
+const ROWS_FOR_ONE: usize = 2;
+/// This many rows to spare, after setting aside, are few (our own).
+const FEW_TO_SPARE: f64 = 3.0;
 /// With more rows than this the median of the residuals is trusted, and pairs are not all tried.
 const MANY_ROWS: usize = 40;
 
@@ -62,8 +64,7 @@ fn find_among_many(design: &[Vec<f64>], observed: &[f64]) -> Vec<usize> {
 fn find_among_few(solution: &Solution) -> Vec<usize> {
     let rows = solution.residuals.len();
     let unknowns = solution.rank();
-    let spare = rows.saturating_sub(unknowns + ROWS_TO_SPARE);
-    let most = spare.min((rows / 4).max(1));
+    let most = (rows.saturating_sub(unknowns) / ROWS_FOR_ONE).min((rows / 4).max(1));
     let mut best: Vec<usize> = Vec::new();
     let mut set: Vec<usize> = Vec::new();
     for count in 1..=most {
@@ -109,8 +110,7 @@ fn smallest_without(solution: &Solution, last: &[usize], count: usize) -> Option
         (_, best) => best,
     };
     if count == 2 {
-        let pairs = (0..rows).flat_map(|i| (i + 1..rows).map(move |j| vec![i, j]));
-        return pairs.fold(None, smaller).map(|(set, _)| set);
+        return pairs(rows).fold(None, smaller).map(|(set, _)| set);
     }
     let with = |set: &[usize], row: usize| set.iter().copied().chain([row]).collect::<Vec<_>>();
     let mut best = (0..rows).filter(|r| !last.contains(r)).map(|r| with(last, r)).fold(None, smaller)?;
@@ -121,6 +121,11 @@ fn smallest_without(solution: &Solution, last: &[usize], count: usize) -> Option
         }
         best = exchanged;
     }
+}
+
+/// Every two rows.
+fn pairs(rows: usize) -> impl Iterator<Item = Vec<usize>> {
+    (0..rows).flat_map(move |i| (i + 1..rows).map(move |j| vec![i, j]))
 }
 
 /// Every set that differs from `set` in one row.
@@ -140,10 +145,15 @@ fn all_stand_out(solution: &Solution, set: &[usize], freedom: usize) -> bool {
     let rows = solution.residuals.len();
     let left = freedom.saturating_sub(set.len()) as f64;
     let variance = ((sum + READING_WEIGHT * READING_DEG.powi(2)) / (left + READING_WEIGHT)).max(READING_DEG.powi(2));
+    // With few rows to spare, several blunders can look like one elsewhere: then what is left must lie well.
+    if left <= FEW_TO_SPARE && sum > left * (2.0 * READING_DEG).powi(2) {
+        return false;
+    }
     let beyond_chance = misses.iter().zip(&variances).all(|(miss, v)| {
         let t = miss / (variance * v).sqrt();
         both_tails(t, (left + READING_WEIGHT) as u32) * (rows as f64) < FALSE_ALARM
     });
-    let clear = |other: &Vec<usize>| sum_without(solution, other).is_none_or(|s| s - sum > TOSS_UP * variance);
-    beyond_chance && exchanges(set, rows).iter().all(clear)
+    let clear = |other: Vec<usize>| sum_without(solution, &other).is_none_or(|s| s - sum > TOSS_UP * variance);
+    let same = |other: &Vec<usize>| other.iter().all(|row| set.contains(row));
+    beyond_chance && exchanges(set, rows).into_iter().all(clear) && (set.len() != 2 || pairs(rows).filter(|other| !same(other)).all(clear))
 }

@@ -17,11 +17,19 @@ fn gaps(headings: impl Iterator<Item = CompassBearing>) -> Vec<(CompassBearing, 
     sorted.iter().zip(next).map(|(heading, next)| (*heading, next - heading.deg())).collect()
 }
 
-/// How many different headings there are.
+/// How many different headings there are: each at least a degree from the one counted before it.
 pub(super) fn distinct(headings: impl Iterator<Item = CompassBearing>) -> usize {
-    let gaps = gaps(headings);
-    // Where all are within a degree, the one gap round the compass is what counts.
-    gaps.iter().filter(|(_, gap)| *gap >= SAME_DEG).count().max(usize::from(!gaps.is_empty()))
+    let (mut count, mut since_last, mut round) = (0, f64::INFINITY, 360.0);
+    for (_, gap) in gaps(headings) {
+        // The first counts; the last does not where it is the first again, across north.
+        if since_last >= SAME_DEG && (count == 0 || round >= SAME_DEG) {
+            count += 1;
+            since_last = 0.0;
+        }
+        since_last += gap;
+        round -= gap;
+    }
+    count
 }
 
 /// The sectors without an observation: from the observed heading before to the one after, clockwise.
@@ -46,5 +54,11 @@ mod tests {
         assert_eq!(distinct(of(&[350.0, 10.0, 200.0, 200.4])), 3);
         assert_eq!(distinct(of(&[90.0, 90.0])), 1);
         assert_eq!(distinct(of(&[])), 0);
+        assert_eq!(distinct(of(&[0.0, 359.5])), 1);
+        assert_eq!(distinct(of(&[0.0, 90.0, 359.5])), 2);
+        // Close together all the way round: one in each degree.
+        let all_round: Vec<f64> = (0..3600).map(|i| f64::from(i) / 10.0).collect();
+        assert!((355..=361).contains(&distinct(of(&all_round))));
+        assert_eq!(distinct(of(&[10.0, 10.6, 11.2, 11.8])), 2);
     }
 }

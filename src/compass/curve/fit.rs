@@ -6,7 +6,7 @@ use super::coverage;
 use super::exact::{self, ExactCoefficients};
 use super::handbook::eight_headings;
 use super::least_squares::{Solution, solve};
-use super::{Reading, Turn};
+use super::{DeviationReading, Turn};
 use crate::angle::CompassBearing;
 use crate::notice::Notice;
 
@@ -132,9 +132,9 @@ pub struct Curve {
 ///
 /// # Example
 /// ```
-/// use shadowpin::{angle::{CompassBearing, Deviation}, compass::curve::{Reading, fit}};
+/// use shadowpin::{angle::{CompassBearing, Deviation}, compass::curve::{DeviationReading, fit}};
 /// let swing = [(0.0, 10.5), (45.0, 20.0), (90.0, 11.5), (135.0, -1.2), (180.0, -5.5), (225.0, -8.0), (270.0, -12.5), (315.0, -6.8)];
-/// let readings = swing.map(|(heading, deviation)| Reading {
+/// let readings = swing.map(|(heading, deviation)| DeviationReading {
 ///     heading: CompassBearing::wrapping_deg(heading),
 ///     deviation: Deviation::wrapping_deg(deviation),
 ///     turn: None,
@@ -142,7 +142,7 @@ pub struct Curve {
 /// let curve = fit(&readings).unwrap();
 /// assert_eq!(format!("{:.2}", curve.coefficients.b), "11.94");
 /// ```
-pub fn fit(readings: &[Reading]) -> Result<Curve, NoCurve> {
+pub fn fit(readings: &[DeviationReading]) -> Result<Curve, NoCurve> {
     let headings: Vec<CompassBearing> = readings.iter().map(|r| r.heading).collect();
     let have = coverage::distinct(headings.iter().copied());
     let too_few = NoCurve::TooFewHeadings { have };
@@ -169,7 +169,7 @@ pub fn fit(readings: &[Reading]) -> Result<Curve, NoCurve> {
     }
     let exact_fit = exact_fit.filter(|(_, exact)| exact.sum_of_squares() < solution.sum_of_squares());
 
-    let kept: Vec<Reading> = without(readings, &aside);
+    let kept: Vec<DeviationReading> = without(readings, &aside);
     let unproven = coverage::unproven(kept.iter().map(|r| r.heading));
     let sum = exact_fit.as_ref().map_or(solution.sum_of_squares(), |(_, exact)| exact.sum_of_squares());
     let mut curve = Curve {
@@ -194,7 +194,7 @@ pub fn fit(readings: &[Reading]) -> Result<Curve, NoCurve> {
         curve.half_turn_difference_deg = u.is_finite().then_some((half, u));
     }
     let half = curve.half_turn_difference_deg.map_or(0.0, |(half, _)| half);
-    let residual = |r: &Reading| r.deviation.deg() - curve.deviation_deg(r.heading) - half * sense(r.turn);
+    let residual = |r: &DeviationReading| r.deviation.deg() - curve.deviation_deg(r.heading) - half * sense(r.turn);
     curve.residuals_deg = readings.iter().map(residual).collect();
     let with_residual = |index: usize| {
         let residual_deg = *curve.residuals_deg.get(index)?;
@@ -248,7 +248,7 @@ fn row(heading: CompassBearing, turn: f64, size: usize) -> Vec<f64> {
     harmonics(heading).into_iter().chain([turn]).take(size).collect()
 }
 
-fn design(readings: &[Reading]) -> Vec<Vec<f64>> {
+fn design(readings: &[DeviationReading]) -> Vec<Vec<f64>> {
     let both = [Turn::Clockwise, Turn::Anticlockwise].iter().all(|turn| readings.iter().any(|r| r.turn == Some(*turn)));
     // A sixth unknown is only worth its place where something is left to tell it from the five.
     let size = if both && readings.len() > LEAST_HEADINGS + 1 { 6 } else { 5 };

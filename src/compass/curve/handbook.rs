@@ -1,6 +1,6 @@
 //! The handbook's rule for eight headings.
 
-use super::{Coefficients, Reading};
+use super::{Coefficients, DeviationReading};
 use crate::angle::CompassBearing;
 
 /// How far from the cardinal and half-cardinal points a heading may be for the rule, degrees (our own).
@@ -11,7 +11,7 @@ const NEAR_DEG: f64 = 3.0;
 /// `None` unless each of the eight points was observed within 3 degrees; several readings at a point are averaged.
 ///
 /// Source: Handbook of Magnetic Compass Adjustment (formerly NGA Pub. 226).
-pub fn eight_headings(readings: &[Reading]) -> Option<Coefficients> {
+pub fn eight_headings(readings: &[DeviationReading]) -> Option<Coefficients> {
     let at = |point: f64| {
         let point = CompassBearing::wrapping_deg(point);
         let near = readings.iter().filter(|r| r.heading.turn_from_deg(point).abs() <= NEAR_DEG).map(|r| r.deviation.deg());

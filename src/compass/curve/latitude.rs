@@ -5,7 +5,7 @@ use super::blunders;
 use super::coefficients::{Coefficients, harmonics};
 use super::fit::NoCurve;
 use super::least_squares::{Solution, solve};
-use super::{Curve, Reading, fit};
+use super::{Curve, DeviationReading, fit};
 use crate::angle::CompassBearing;
 use crate::compass::field::Field;
 
@@ -73,8 +73,8 @@ pub struct LatitudeCurve {
 ///
 /// # Errors
 /// [`NoCurve::TooFewHeadings`] with fewer than five different headings.
-pub fn fit_by_latitude(readings: &[(Reading, MagneticPlace)]) -> Result<LatitudeCurve, NoCurve> {
-    let only: Vec<Reading> = readings.iter().map(|(r, _)| *r).collect();
+pub fn fit_by_latitude(readings: &[(DeviationReading, MagneticPlace)]) -> Result<LatitudeCurve, NoCurve> {
+    let only: Vec<DeviationReading> = readings.iter().map(|(r, _)| *r).collect();
     // The ordinary fit refuses what is too little for this one too.
     let plain = fit(&only);
     let Some(reference_nt) = readings.first().map(|(_, place)| place.horizontal_nt) else {

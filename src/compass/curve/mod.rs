@@ -28,7 +28,7 @@ pub enum Turn {
 
 /// One deviation, on one heading.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Reading {
+pub struct DeviationReading {
     /// Ship's head by the compass.
     pub heading: CompassBearing,
     /// The deviation found, east +.
