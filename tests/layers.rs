@@ -61,7 +61,9 @@ fn each_layer_uses_only_those_above_it() {
             }
         }
         for forbidden in ["println!", "eprintln!", "Utc::now", "SystemTime::now", "std::env::"] {
-            if code.contains(forbidden) {
+            // A unit test may print what it measures.
+            let shipped = code.split("#[cfg(test)]").next().unwrap_or_default();
+            if shipped.contains(forbidden) {
                 wrong.push(format!("{} holds {forbidden}", file.display()));
             }
         }

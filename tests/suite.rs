@@ -1,4 +1,6 @@
 //! The one test program: outside values, properties, bad logs, commands, layers.
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "a test that fails should stop")]
 
 mod layers;
+mod properties;
 mod published;

@@ -1,8 +1,11 @@
 //! Where a body is, as seen from the centre of the earth.
 
 mod body;
+pub mod earth;
+pub mod sun;
 
 pub use body::{Body, Planet};
+pub use earth::aries_gha_deg;
 
 /// The direction of a body's centre as seen from the centre of the earth: apparent place, true equator and equinox of date.
 #[derive(Debug, Clone, Copy, PartialEq)]

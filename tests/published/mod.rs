@@ -8,3 +8,8 @@ pub fn file(name: &str) -> String {
     let path = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("fixtures/published").join(name);
     std::fs::read_to_string(&path).unwrap_or_else(|e| panic!("{}: {e}", path.display()))
 }
+
+mod azimuth_table;
+mod jpl_rise_set;
+mod jpl_sun;
+mod worked_examples;

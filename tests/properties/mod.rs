@@ -1,0 +1,3 @@
+//! What must hold for every input: symmetries, no seam anywhere, no answer that is not a number.
+
+mod horizon;
