@@ -38,6 +38,11 @@ pub enum Notice {
         /// Horizontal intensity, nanotesla.
         horizontal_nt: f64,
     },
+    /// The horizontal field is so weak that a magnetic compass does not point (`no-compass`).
+    NoCompass {
+        /// Horizontal intensity, nanotesla.
+        horizontal_nt: f64,
+    },
     /// The zone does not fit the longitude (`zone-odd`).
     ZoneOdd {
         /// Zone description, hours.
@@ -92,6 +97,7 @@ impl Notice {
             Self::Heeled { .. } => "heeled",
             Self::AtBerth => "at-berth",
             Self::WeakField { .. } => "weak-field",
+            Self::NoCompass { .. } => "no-compass",
             Self::ZoneOdd { .. } => "zone-odd",
             Self::ModelEnded { .. } => "model-ended",
             Self::MayBeOverLimit { .. } => "may-be-over-limit",
@@ -124,6 +130,9 @@ impl fmt::Display for Notice {
             Self::AtBerth => write!(f, "alongside: steel ashore may pull the magnetic compass"),
             Self::WeakField { horizontal_nt } => {
                 write!(f, "the horizontal field is only {horizontal_nt:.0} nT: the magnetic compass is sluggish")
+            }
+            Self::NoCompass { horizontal_nt } => {
+                write!(f, "the horizontal field is only {horizontal_nt:.0} nT: a magnetic compass is of no use here")
             }
             Self::ZoneOdd { zone_h, expected_h } => write!(f, "zone {zone_h:+.2} where the longitude suggests {expected_h:+.0}"),
             Self::ModelEnded { valid_to, year } => {

@@ -2,5 +2,6 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "a test that fails should stop")]
 
 mod layers;
+mod magnetic;
 mod properties;
 mod published;

@@ -1,1 +1,3 @@
 //! Errors of the gyrocompass and the magnetic compass.
+
+pub mod field;

@@ -2,8 +2,9 @@
 //!
 //! The files they read stand in `fixtures/published`; `fixtures/README.md` names the source of each.
 
+mod wmm2025;
+
 /// A published file as delivered: its path below `fixtures/published`.
-#[allow(dead_code, reason = "used by each file as it is added")]
 pub fn file(name: &str) -> String {
     let path = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("fixtures/published").join(name);
     std::fs::read_to_string(&path).unwrap_or_else(|e| panic!("{}: {e}", path.display()))

@@ -1,0 +1,3 @@
+//! The magnetic compass: field model, deviation curve, card and swing.
+
+mod field_model;
