@@ -1,0 +1,104 @@
+//! The order of time and the track: which rows do not fit between their neighbours.
+
+use super::fact::{Fact, flag};
+use crate::limits::Limits;
+
+/// Miles that positions may be apart whatever the time: two fixes, a berth shifted.
+const SLACK_MILES: f64 = 10.0;
+/// Rows ahead that are asked whether the track goes on without the row in doubt.
+const AHEAD: usize = 3;
+
+/// Great-circle distance in nautical miles between two positions in degrees (haversine).
+pub fn miles(from: (f64, f64), to: (f64, f64)) -> f64 {
+    let (lat0, lat1) = (from.0.to_radians(), to.0.to_radians());
+    let (dlat, dlon) = (lat1 - lat0, (to.1 - from.1).to_radians());
+    let h = (dlat / 2.0).sin().powi(2) + lat0.cos() * lat1.cos() * (dlon / 2.0).sin().powi(2);
+    2.0 * h.clamp(0.0, 1.0).sqrt().asin().to_degrees() * 60.0
+}
+
+/// Marks the rows whose removal restores the order of time, and those whose removal lets the track go on.
+pub fn mark(facts: &mut [Fact], limits: &Limits) {
+    mark_order(facts);
+    mark_track(facts, limits.thresholds.max_speed_kn);
+}
+
+/// All rows outside a longest run that never goes back in time. Where that would be most of them, the log has another order
+/// and none is marked.
+fn mark_order(facts: &mut [Fact]) {
+    let timed: Vec<(usize, i64)> = facts.iter().enumerate().filter_map(|(i, f)| Some((i, f.seconds()?))).collect();
+    if timed.windows(2).all(|w| matches!(w, [a, b] if a.1 <= b.1)) {
+        return;
+    }
+    // Patience: the last place of the best run of each length, and who came before.
+    let mut ends: Vec<usize> = Vec::new();
+    let mut before: Vec<Option<usize>> = vec![None; timed.len()];
+    for (at, (_, time)) in timed.iter().enumerate() {
+        let length = ends.partition_point(|&e| timed.get(e).is_some_and(|t| t.1 <= *time));
+        if let Some(slot) = before.get_mut(at) {
+            *slot = length.checked_sub(1).and_then(|l| ends.get(l).copied());
+        }
+        match ends.get_mut(length) {
+            Some(end) => *end = at,
+            None => ends.push(at),
+        }
+    }
+    if ends.len() * 2 < timed.len() {
+        return;
+    }
+    let mut kept = vec![false; timed.len()];
+    let mut at = ends.last().copied();
+    while let Some(place) = at {
+        if let Some(slot) = kept.get_mut(place) {
+            *slot = true;
+        }
+        at = before.get(place).copied().flatten();
+    }
+    for ((row, _), kept) in timed.iter().zip(kept) {
+        if !kept && let Some(fact) = facts.get_mut(*row) {
+            fact.flags |= flag::OUT_OF_ORDER;
+        }
+    }
+}
+
+/// Over the miles that could be run in the time between.
+fn too_far(a: &Fact, b: &Fact, max_speed_kn: f64) -> Option<bool> {
+    let (miles, most) = apart(a, b, max_speed_kn)?;
+    Some(miles > most)
+}
+
+/// Miles between two rows, and the most that could be run.
+pub fn apart(a: &Fact, b: &Fact, max_speed_kn: f64) -> Option<(f64, f64)> {
+    let hours = (b.seconds()? - a.seconds()?).abs() as f64 / 3600.0;
+    Some((miles(a.place()?, b.place()?), hours * max_speed_kn + SLACK_MILES))
+}
+
+fn mark_track(facts: &mut [Fact], max_speed_kn: f64) {
+    let track: Vec<usize> = facts
+        .iter()
+        .enumerate()
+        .filter(|(_, f)| f.has(flag::TIME) && f.has(flag::PLACE) && !f.has(flag::OUT_OF_ORDER))
+        .map(|(i, _)| i)
+        .collect();
+    let far = |facts: &[Fact], a: usize, b: usize| -> bool {
+        facts.get(a).zip(facts.get(b)).and_then(|(a, b)| too_far(a, b, max_speed_kn)).unwrap_or(false)
+    };
+    let mut previous: Option<usize> = None;
+    for (at, &row) in track.iter().enumerate() {
+        let next = track.get(at + 1..).unwrap_or_default();
+        let bad = match previous {
+            Some(previous) => {
+                far(facts, previous, row) && next.iter().take(AHEAD).any(|&n| !far(facts, previous, n) && far(facts, row, n))
+                    // The last row has no other side: its neighbours alone agree.
+                    || (next.is_empty() && far(facts, previous, row))
+            }
+            None => matches!(next, [one, two, ..] if far(facts, row, *one) && far(facts, row, *two) && !far(facts, *one, *two)),
+        };
+        if bad {
+            if let Some(fact) = facts.get_mut(row) {
+                fact.flags |= flag::TOO_FAR;
+            }
+        } else {
+            previous = Some(row);
+        }
+    }
+}
