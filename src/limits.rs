@@ -5,6 +5,28 @@
 pub struct Limits {
     /// What the uncertainty of a figure is made of.
     pub uncertainty: Uncertainty,
+    /// Thresholds.
+    pub thresholds: Thresholds,
+}
+
+/// Thresholds.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Thresholds {
+    /// x
+    pub altitude_fair_deg: f64,
+    /// x
+    pub altitude_weak_deg: f64,
+    /// x
+    pub horizon_weak: f64,
+    /// x
+    pub heeled_deg: f64,
+    /// x
+    pub gyro_doubtful_latitude_deg: f64,
+}
+impl Default for Thresholds {
+    fn default() -> Self {
+        Self { altitude_fair_deg: 30.0, altitude_weak_deg: 60.0, horizon_weak: 1.5, heeled_deg: 3.0, gyro_doubtful_latitude_deg: 70.0 }
+    }
 }
 
 /// Standard uncertainties (one sigma) of what goes into a figure.
@@ -24,6 +46,10 @@ pub struct Uncertainty {
     pub heading_comparison_deg: f64,
     /// Altitude of the instant of rising or setting, degrees.
     pub horizon_instant_deg: f64,
+    /// x
+    pub eye_height_assumed_m: f64,
+    /// x
+    pub eye_height_assumed_u_m: f64,
 }
 
 impl Default for Uncertainty {
@@ -36,6 +62,15 @@ impl Default for Uncertainty {
             position_nm: 1.0,
             heading_comparison_deg: 0.7,
             horizon_instant_deg: 0.2,
+            eye_height_assumed_m: 15.0,
+            eye_height_assumed_u_m: 5.0,
         }
+    }
+}
+
+impl Limits {
+    /// x
+    pub fn from_toml(_: &str, _: &str) -> crate::error::Result<Self> {
+        Ok(Self::default())
     }
 }

@@ -1,7 +1,12 @@
 //! One file a command; each sees only the public library.
 
+mod amplitude;
+mod azimuth;
 mod exit;
+mod instruments;
+mod one_row;
 mod output;
+mod when_where;
 
 use clap::{Parser, Subcommand};
 use exit::Exit;
@@ -19,7 +24,10 @@ struct Cli {
 }
 
 #[derive(Subcommand)]
-enum Command {}
+enum Command {
+    Azimuth(azimuth::Args),
+    Amplitude(amplitude::Args),
+}
 
 /// Runs the command line and answers the exit code: 0 nothing to report, 1 queries, 2 could not run, 3 problem rows.
 pub fn main() -> ExitCode {
@@ -41,5 +49,8 @@ pub fn main() -> ExitCode {
 }
 
 fn run(command: Command) -> shadowpin::error::Result<Exit> {
-    match command {}
+    match command {
+        Command::Azimuth(args) => azimuth::run(args),
+        Command::Amplitude(args) => amplitude::run(args),
+    }
 }

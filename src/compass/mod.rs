@@ -1,3 +1,14 @@
-//! Errors of the gyrocompass and the magnetic compass.
+//! Errors of the gyrocompass and the magnetic compass: one observation worked, variation, deviation, the gyro.
 
+mod budget;
+mod direction;
 pub mod field;
+mod observation;
+mod trust;
+mod work;
+
+pub use budget::{Budget, step_u};
+pub use direction::almanac_u_deg;
+pub use observation::{GyroType, HorizonKind, Observation, Place, Target, Whereabouts};
+pub use trust::{FAIR_U_DEG, FIRM_U_DEG, Trust};
+pub use work::{Figure, GyroRun, OnHorizon, Worked, work};

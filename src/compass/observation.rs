@@ -1,33 +1,9 @@
 //! What an officer observed: one body or mark, one moment.
 
-use crate::angle::{CompassBearing, GyroBearing, Position, TrueBearing};
+use crate::angle::{CompassBearing, GyroBearing, Position, Reading, TrueBearing};
+use crate::horizon::{Limb, RisingOrSetting};
 use crate::sky::Body;
-use crate::time::UtcInstant;
-
-/// A direction as read, with the step it is written in.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Reading<T> {
-    /// The direction read.
-    pub value: T,
-    /// The step of the figure, degrees: 0.5 for readings to the half degree.
-    pub step_deg: f64,
-}
-
-impl<T> Reading<T> {
-    /// A reading written in steps of `step_deg` degrees.
-    pub fn new(value: T, step_deg: f64) -> Self {
-        Self { value, step_deg }
-    }
-}
-
-/// A moment as written.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Moment {
-    /// The instant.
-    pub utc: UtcInstant,
-    /// The step of the figure, seconds: 60 for HH:MM.
-    pub step_s: f64,
-}
+use crate::time::Moment;
 
 /// A place as written.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -38,15 +14,6 @@ pub struct Place {
     pub step_deg: f64,
 }
 
-/// Which of its two crossings of the horizon a body was observed at.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum HorizonEvent {
-    /// Coming up, in the eastern half.
-    Rising,
-    /// Going down, in the western half.
-    Setting,
-}
-
 /// The horizon that a rising or setting was observed on.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum HorizonKind {
@@ -54,17 +21,6 @@ pub enum HorizonKind {
     Celestial,
     /// The part named of the body's disc on the line of sea and sky.
     Visible(Limb),
-}
-
-/// The part of a disc that touched the visible horizon.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum Limb {
-    /// The centre.
-    Centre,
-    /// The upper limb.
-    Upper,
-    /// The lower limb.
-    Lower,
 }
 
 /// What the bearing was taken of.
@@ -77,7 +33,7 @@ pub enum Target {
         /// The body.
         body: Body,
         /// Rising or setting.
-        event: HorizonEvent,
+        event: RisingOrSetting,
         /// On which horizon.
         horizon: HorizonKind,
     },

@@ -1,16 +1,15 @@
 //! One observation worked: from what was written to errors, each with its uncertainty.
 
 use super::budget::{Budget, step_u};
+use super::direction;
 use super::field::{self, Field};
-use super::observation::{HorizonEvent, HorizonKind, Observation, Place, Target};
+use super::observation::{Observation, Target};
 use super::trust::Trust;
 use crate::angle::{CompassError, Deviation, GyroError, TrueBearing, Variation};
 use crate::error::NoAnswer;
-use crate::horizon::{self, Horizontal, Rates};
+use crate::horizon::{Horizontal, Search};
 use crate::limits::Limits;
 use crate::notice::Notice;
-use crate::sky::{self, Body};
-use crate::time::UtcInstant;
 
 /// A figure with what its uncertainty is made of.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -41,19 +40,11 @@ pub struct GyroRun {
 
 /// How a body stood to the horizon it was said to be on.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub enum OnHorizon {
-    /// It was on that horizon `seconds` after the time written (before where negative).
-    Crossed {
-        /// The instant on that horizon.
-        utc: UtcInstant,
-        /// Degrees of altitude from that horizon at the time written, up +.
-        off_deg: f64,
-    },
-    /// It does not come to that horizon there on that day.
-    Never {
-        /// Altitude at the time written, degrees.
-        altitude_deg: f64,
-    },
+pub struct OnHorizon {
+    /// When and where it crossed that horizon, or that it does not.
+    pub search: Search,
+    /// Degrees of altitude from that horizon at the time written, up +.
+    pub off_deg: f64,
 }
 
 /// What one observation gives.
@@ -73,6 +64,8 @@ pub struct Worked {
     pub gyro_error: Option<Figure<GyroError>>,
     /// Compass error by a bearing read on the magnetic compass.
     pub compass_error: Option<Figure<CompassError>>,
+    /// Altitude that the tilt of the instrument counts with, degrees; `None` for a mark or headings.
+    pub sighted_altitude_deg: Option<f64>,
     /// Ship's head, true.
     pub true_heading: Option<TrueBearing>,
     /// Compass error by comparison of headings.
@@ -89,4 +82,104 @@ pub struct Worked {
     pub trust: Option<Trust>,
     /// Done, but less surely.
     pub notices: Vec<Notice>,
+}
+
+/// Works one observation.
+///
+/// `run` is what other observations say of the gyro at that time; it is used only where headings alone were compared.
+/// Whatever is not written, or has no answer, leaves its figures blank: a body in the zenith says so in `no_azimuth`.
+///
+/// Signs: as in the [conventions](crate#conventions). Source of the uncertainties: [`Budget`].
+pub fn work(observation: &Observation, run: Option<GyroRun>, limits: &Limits) -> Worked {
+    let mut worked = Worked::default();
+    earth_field(observation, &mut worked);
+    direction::reckon(observation, limits, &mut worked);
+    by_bearing(observation, limits, &mut worked);
+    by_comparison(observation, run, limits, &mut worked);
+    worked.deviation = worked.compass_error.zip(worked.variation).map(deviation);
+    worked.deviation_by_comparison = worked.compass_error_by_comparison.zip(worked.variation).map(deviation);
+    worked.trust = trust(&worked, limits);
+    notices(observation, limits, &mut worked);
+    worked
+}
+
+fn earth_field(observation: &Observation, worked: &mut Worked) {
+    let (Some(moment), Some(place)) = (observation.moment, observation.place) else { return };
+    // A compass aboard a ship: height 0. Outside the models' years there is no variation, and the row shows none.
+    let Ok(field) = field::field(place.position, moment.utc, 0.0) else { return };
+    worked.notices.extend(field.notices());
+    worked.variation =
+        Some(Figure { value: field.variation, budget: Budget { variation_deg: field.variation_u_deg, ..Budget::default() } });
+    worked.field = Some(field);
+}
+
+/// Gyro error = azimuth - gyro bearing; compass error = azimuth - compass bearing.
+fn by_bearing(observation: &Observation, limits: &Limits, worked: &mut Worked) {
+    let Some(azimuth) = worked.true_azimuth else { return };
+    let tilt_deg = worked.sighted_altitude_deg.map_or(0.0, |altitude| limits.uncertainty.tilt_deg * altitude.to_radians().tan().abs());
+    let budget = |reading_deg: f64, step_deg: f64| Budget { reading_deg, step_deg: step_u(step_deg), tilt_deg, ..worked.azimuth_budget };
+    if let Some(gyro) = observation.gyro_bearing {
+        let budget = budget(limits.uncertainty.reading_gyro_deg, gyro.step_deg);
+        worked.gyro_error = Some(Figure { value: azimuth - gyro.value, budget });
+    }
+    if let Some(compass) = observation.compass_bearing {
+        let budget = budget(limits.uncertainty.reading_compass_deg, compass.step_deg);
+        worked.compass_error = Some(Figure { value: azimuth - compass.value, budget });
+    }
+}
+
+/// True heading = gyro heading + gyro error; compass error by comparison = true heading - compass heading.
+fn by_comparison(observation: &Observation, run: Option<GyroRun>, limits: &Limits, worked: &mut Worked) {
+    let Some(gyro_heading) = observation.gyro_heading else { return };
+    let (gyro_error, gyro_u_deg) = match (worked.gyro_error, run) {
+        (Some(observed), _) => (observed.value, observed.u_deg()),
+        (None, Some(run)) if observation.target == Target::Headings => {
+            worked.notices.push(Notice::GyroErrorFromRun { age_h: run.age_h });
+            (run.error, run.u_deg)
+        }
+        _ => return,
+    };
+    let true_heading = gyro_heading.value + gyro_error;
+    worked.true_heading = Some(true_heading);
+    let Some(compass_heading) = observation.compass_heading else { return };
+    let headings_deg =
+        limits.uncertainty.heading_comparison_deg.hypot(step_u(gyro_heading.step_deg)).hypot(step_u(compass_heading.step_deg));
+    worked.compass_error_by_comparison = Some(Figure {
+        value: true_heading - compass_heading.value,
+        budget: Budget { headings_deg, gyro_deg: gyro_u_deg, ..Budget::default() },
+    });
+}
+
+/// Deviation = compass error - variation.
+fn deviation((error, variation): (Figure<CompassError>, Figure<Variation>)) -> Figure<Deviation> {
+    Figure { value: error.value - variation.value, budget: Budget { variation_deg: variation.u_deg(), ..error.budget } }
+}
+
+/// The band of the best figure of the row: a bearing by gyro, else by magnetic compass, else by comparison.
+fn trust(worked: &Worked, limits: &Limits) -> Option<Trust> {
+    let u_deg = worked
+        .gyro_error
+        .map(|f| f.u_deg())
+        .or(worked.compass_error.map(|f| f.u_deg()))
+        .or(worked.compass_error_by_comparison.map(|f| f.u_deg()))?;
+    Some(Trust::of(u_deg, worked.sighted_altitude_deg, limits))
+}
+
+fn notices(observation: &Observation, limits: &Limits, worked: &mut Worked) {
+    use super::observation::Whereabouts;
+    if let Some(altitude_deg) = worked.sighted_altitude_deg.filter(|a| *a > limits.thresholds.altitude_weak_deg) {
+        worked.notices.push(Notice::High { altitude_deg });
+    }
+    if let Some(heel_deg) = observation.heel_deg.filter(|h| h.abs() > limits.thresholds.heeled_deg) {
+        worked.notices.push(Notice::Heeled { heel_deg });
+    }
+    if observation.whereabouts == Whereabouts::Berth {
+        worked.notices.push(Notice::AtBerth);
+    }
+    if let Some(place) = observation.place
+        && worked.gyro_error.is_some()
+        && place.position.lat.deg().abs() > limits.thresholds.gyro_doubtful_latitude_deg
+    {
+        worked.notices.push(Notice::GyroDoubtful { latitude_deg: place.position.lat.deg() });
+    }
 }

@@ -3,6 +3,8 @@
 mod amplitude;
 mod crossing;
 mod events;
+mod hand;
+mod ladder;
 mod observer;
 mod refraction;
 mod sensitivity;
@@ -13,6 +15,8 @@ pub use amplitude::{
     height_above_visible_horizon_deg,
 };
 pub use events::{DAY_SPAN_S, HorizonEvent, Search, Target, Twilight, events_between, nearest_event, next_event, previous_event};
+pub use hand::{Abc, HandWorking, by_hand};
+pub use ladder::{Rung, ladder, limb_diameters, watched_limb};
 pub use observer::{Horizontal, altitude_deg, geocentric_altitude_deg, horizontal, lha_deg};
 pub use refraction::{dip_deg, refraction_from_apparent_deg, refraction_from_true_deg};
 pub use sensitivity::{Motion, Sensitivity, azimuth_per_altitude_on_horizon, sensitivity};

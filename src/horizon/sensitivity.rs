@@ -110,7 +110,9 @@ mod tests {
         fn small_differences_agree(lat in -80.0..80.0_f64, lon in -179.0..179.0_f64, gha in 0.0..360.0_f64, dec in -60.0..60.0_f64, hp in prop_oneof![Just(0.0), 0.0..1.03_f64], climb in -5e-5..5e-5_f64) {
             let place = ApparentPlace { gha_deg: gha, declination_deg: dec, horizontal_parallax_deg: hp, semidiameter_deg: 0.0 };
             let position = Position::from_deg(lat, lon).unwrap();
-            prop_assume!(horizontal(&place, position).unwrap().altitude_deg.abs() < 80.0);
+            if horizontal(&place, position).unwrap().altitude_deg.abs() > 80.0 {
+                return Ok(());
+            }
             let motion = Motion { declination_deg_per_s: climb, ..Motion::MOON };
             let exact = sensitivity(&place, position, motion).unwrap();
             let step = 1e-3;

@@ -9,6 +9,8 @@ pub enum Body {
     Moon,
     /// One of the four navigational planets.
     Planet(Planet),
+    /// x
+    Star(u8),
 }
 
 /// The planets used in navigation.
@@ -22,4 +24,15 @@ pub enum Planet {
     Jupiter,
     /// Saturn.
     Saturn,
+}
+
+impl Body {
+    /// x
+    pub fn name(self) -> &'static str {
+        "Sun"
+    }
+    /// x
+    pub fn from_name(_: &str) -> Result<Self, crate::error::BadValue> {
+        Ok(Self::Sun)
+    }
 }

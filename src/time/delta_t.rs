@@ -7,9 +7,10 @@ const SECONDS_PER_DAY: f64 = 86_400.0;
 /// TT - UT1 at a decimal year, seconds.
 ///
 /// Range: 1900 to 2101; outside, the nearest piece goes on.
-/// Error bound: to 2005 under 1 s against what was observed; later it is a forecast made in 2004, about 6 s too large in
-/// 2026 (69 s by then), and perhaps 100 s out in 2100. What an error of 10 s does: the sun moves 0.4" (0.0001 degrees), the
-/// moon 5.5" (0.0015 degrees). Neighbouring pieces meet within 0.4 s (test `pieces_meet`).
+/// Error bound: within 0.9 s of TT - UTC in 1972-2004, and 6.5 s too large in 2026 (test `against_leap_seconds`; UTC is kept
+/// within 0.9 s of UT1); later years are a forecast made in 2004. An error of 10 s moves the sun 0.4" (0.0001 degrees) and
+/// the moon 5.5" (0.0015 degrees); one of 100 s, which may be so by 2100, ten times as much. Neighbouring pieces meet within
+/// 0.05 s (test `pieces_meet`).
 /// Source: F. Espenak and J. Meeus, Five Millennium Canon of Solar Eclipses, NASA/TP-2006-214141, section 2.8.
 pub fn delta_t_s(year: f64) -> f64 {
     if year < 1920.0 {
@@ -53,9 +54,21 @@ mod tests {
         for seam in [1920.0, 1941.0, 1961.0, 1986.0, 2005.0, 2050.0] {
             let jump = (delta_t_s(seam) - delta_t_s(seam - 1e-9)).abs();
             worst = worst.max(jump);
-            assert!(jump < 0.4, "{seam}: {jump} s");
+            assert!(jump < 0.06, "{seam}: {jump} s");
         }
         println!("worst jump {worst:.3} s");
+    }
+
+    /// TT - UTC is 32.184 s and the leap seconds (TAI - UTC); UT1 is never more than 0.9 s from UTC.
+    #[test]
+    fn against_leap_seconds() {
+        let off = |year: i32, month: i32| {
+            let leap = sofars::ts::dat(year, month, 1, 0.0).unwrap();
+            delta_t_s(f64::from(year) + f64::from(month - 1) / 12.0) - (32.184 + leap)
+        };
+        let worst = (1972..2005).flat_map(|year| (1..=12).map(move |month| off(year, month).abs())).fold(0.0, f64::max);
+        println!("1972-2004: {worst:.2} s; 2026: {:.2} s", off(2026, 12));
+        assert!(worst < 0.9 && (5.0..7.5).contains(&off(2026, 12)));
     }
 
     #[test]

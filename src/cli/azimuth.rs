@@ -1,0 +1,66 @@
+//! `shadowpin azimuth`: one bearing.
+
+use super::exit::Exit;
+use super::instruments::Instruments;
+use super::one_row;
+use super::output::{Format, OutputArgs};
+use super::when_where::{WhenWhere, option};
+use clap::Args as ClapArgs;
+use shadowpin::compass::{Observation, Target, work};
+use shadowpin::error::Result;
+use shadowpin::horizon::by_hand;
+use shadowpin::report::azimuth::AzimuthPage;
+use shadowpin::sky::Body;
+
+/// The azimuth of a body, and what a bearing of it says of the compasses.
+#[derive(Debug, ClapArgs)]
+#[command(after_help = "Example: the sun by gyro and by the standard compass\n  \
+    shadowpin azimuth --utc 2026-06-14T06:12:00Z --lat 36-05.8S --lon 130-33.6E --body sun --gyro 319.5 --compass 316 \\\n    \
+    --gyro-heading 204 --compass-heading 200.5\n\n\
+    Without a bearing it gives the azimuth alone. Never look at the sun without the azimuth circle's shades.")]
+pub struct Args {
+    #[command(flatten)]
+    when_where: WhenWhere,
+    /// Sun, Moon, Venus, Mars, Jupiter, Saturn or a star's name
+    #[arg(long, value_name = "NAME")]
+    body: String,
+    #[command(flatten)]
+    instruments: Instruments,
+    /// List every term of each uncertainty
+    #[arg(long)]
+    budget: bool,
+    #[command(flatten)]
+    output: OutputArgs,
+}
+
+/// Works the bearing and writes the answer.
+pub fn run(args: Args) -> Result<Exit> {
+    let (moment, zone) = args.when_where.moment()?;
+    let place = args.when_where.place()?;
+    let body = option("--body", Body::from_name(&args.body))?;
+    let limits = args.instruments.limits()?;
+    let mut observation = Observation { moment: Some(moment), place: Some(place), ..Observation::of(Target::Body(body)) };
+    args.instruments.fill(&mut observation)?;
+    let worked = work(&observation, None, &limits);
+    if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
+        return Err(reason.into());
+    }
+    let answer = match args.output.format {
+        Format::Text => AzimuthPage {
+            body,
+            utc: moment.utc,
+            zone,
+            position: place.position,
+            observation: &observation,
+            worked: &worked,
+            hand: by_hand(body, moment.utc, place.position),
+            remarks: Vec::new(),
+            with_budget: args.budget,
+        }
+        .text(),
+        Format::Json => one_row::json(&observation, &worked),
+        Format::Csv => one_row::csv(&observation, &worked),
+    };
+    args.output.write(&answer)?;
+    Ok(Exit::Clean)
+}
