@@ -6,9 +6,10 @@ use super::fleet::Fleet;
 use super::query::Query;
 use super::row::{CardFigure, Logged, Names, Row};
 use super::vessel::Vessel;
-use crate::compass::{GyroType, Moment, Observation, Place, Reading, Worked};
+use crate::angle::Reading;
+use crate::compass::{GyroType, Observation, Place, Worked};
 use crate::limits::Limits;
-use crate::time::Zone;
+use crate::time::{Moment, Zone};
 use std::collections::HashMap;
 
 /// Rows of a vessel that are looked at for a copy.

@@ -1,7 +1,7 @@
 //! What the review reads of one row.
 
-use crate::compass::{Moment, Observation, Place, Worked};
-use crate::time::Zone;
+use crate::compass::{Observation, Place, Worked};
+use crate::time::{Moment, Zone};
 
 /// A signed figure or a direction as the officer wrote it.
 #[derive(Debug, Clone, Copy, PartialEq)]

@@ -160,11 +160,11 @@ pub fn voyage(ship: &Ship, style: Style) -> Vec<Entry> {
             course = rng.between(0.0, 360.0);
             speed = rng.between(10.0, 18.0);
         }
-        let away = |lat: f64| lat + speed * (dt as f64 / 3600.0) / 60.0 * course.to_radians().cos();
-        if !(ship.lat_band.0..=ship.lat_band.1).contains(&away(lat)) {
+        let away = |course: f64| lat + speed * (dt as f64 / 3600.0) / 60.0 * course.to_radians().cos();
+        if !(ship.lat_band.0..=ship.lat_band.1).contains(&away(course)) {
             course = wrap_360_deg(180.0 - course);
         }
-        lat = away(lat).clamp(-88.0, 88.0);
+        lat = away(course).clamp(-88.0, 88.0);
         lon = wrap_180_deg(lon + speed * (dt as f64 / 3600.0) / 60.0 * course.to_radians().sin() / lat.to_radians().cos());
         wander = wander * 0.9 + rng.normal(0.12 * 0.436);
         local = local * 0.97 + rng.normal(0.26 * 0.243);

@@ -1,0 +1,5 @@
+//! The review measured on logs with known truth.
+
+mod delivered;
+mod measure;
+mod read;
