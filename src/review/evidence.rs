@@ -27,6 +27,8 @@ pub struct Context<'a> {
     pub after: Option<&'a Fact>,
     /// A few rows before it.
     pub earlier: &'a [Fact],
+    /// Speed written on the row, knots.
+    pub speed_kn: Option<f64>,
     pub limits: &'a Limits,
 }
 
@@ -45,13 +47,31 @@ const CHART_U_DEG: f64 = 0.15;
 const CANNOT_BE: f64 = 6.0;
 /// Altitudes at a rising or setting are judged by eye to this, degrees.
 const HORIZON_U_DEG: f64 = 0.5;
-/// Dead reckoning between entries: so many miles, and this share of the distance run.
+/// Fixes are good for so many miles.
 const TRACK_MILES: f64 = 4.0;
-const TRACK_SHARE: f64 = 0.15;
-/// Miles run in an hour where nothing says how fast the ship was.
-const USUAL_KN: f64 = 14.0;
+/// Between entries a ship may alter course: the straight track is known to this share of the distance run.
+const TRACK_SHARE: f64 = 0.5;
+/// No ship runs further than her speed and this share more, with the stream.
+const STREAM_SHARE: f64 = 0.1;
+/// Knots where nothing says how fast the ship was.
+const USUAL_KN: f64 = 18.0;
 
 impl Context<'_> {
+    fn speed_kn(&self) -> f64 {
+        self.speed_kn.unwrap_or(USUAL_KN).max(5.0)
+    }
+
+    /// Standard deviations by which the position is further from its neighbours than could be run in the time.
+    fn out_of_reach(&self, utc: UtcInstant, position: (f64, f64)) -> Option<f64> {
+        let excess = |f: &Fact| {
+            let hours = (utc.unix_ms() - f.unix_ms()?).abs() as f64 / 3_600_000.0;
+            let run = self.speed_kn() * hours;
+            Some((miles(f.place()?, position) - run * (1.0 + STREAM_SHARE) - TRACK_MILES) / (TRACK_MILES + STREAM_SHARE * run))
+        };
+        let (a, b) = (self.before.and_then(excess), self.after.and_then(excess));
+        Some(a.into_iter().chain(b).fold(f64::NEG_INFINITY, f64::max)).filter(|e| e.is_finite())
+    }
+
     /// The position on the track at `utc`, degrees, and how far it is known, miles; beyond the neighbours, carried on.
     pub fn on_track(&self, utc: Option<UtcInstant>) -> Option<((f64, f64), f64)> {
         let t = utc?.unix_ms() as f64 / 1000.0;
@@ -63,9 +83,9 @@ impl Context<'_> {
                 let share = ((t - a.0) / (b.0 - a.0)).clamp(-1.0, 2.0);
                 let lon = a.1.1 + share * wrap_180_deg(b.1.1 - a.1.1);
                 let hours = near(a).min(near(b));
-                Some(((a.1.0 + share * (b.1.0 - a.1.0), lon), TRACK_MILES + TRACK_SHARE * USUAL_KN * hours))
+                Some(((a.1.0 + share * (b.1.0 - a.1.0), lon), TRACK_MILES + TRACK_SHARE * self.speed_kn() * hours))
             }
-            (Some(one), _) | (None, Some(one)) => Some((one.1, TRACK_MILES + USUAL_KN * near(one))),
+            (Some(one), _) | (None, Some(one)) => Some((one.1, TRACK_MILES + self.speed_kn() * near(one))),
             (None, None) => None,
         }
     }
@@ -248,8 +268,9 @@ fn dark(body: Body, case: &Case, context: &Context, left: &mut Left) {
 fn track(case: &Case, context: &Context, left: &mut Left) {
     let Some(utc) = case.so.utc else { return };
     if let (Some(position), Some((there, miles_u))) = (case.so.position, context.on_track(Some(utc))) {
-        let off = miles(there, (position.lat.deg(), position.lon.deg()));
-        left.other(off / miles_u);
+        let here = (position.lat.deg(), position.lon.deg());
+        left.other(miles(there, here) / miles_u);
+        left.other(context.out_of_reach(utc, here).unwrap_or(0.0).max(0.0));
     }
     let hours_past = |f: Option<&Fact>, way: f64| {
         f.and_then(Fact::unix_ms).map_or(0.0, |t| way * (utc.unix_ms() - t) as f64 / 3_600_000.0)

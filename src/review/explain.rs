@@ -105,7 +105,7 @@ fn pairs(row: &Row, tried: &[Tried], list: &[Candidate], context: &Context, none
 /// The gyro error of `row` with that slip undone, degrees.
 pub fn gyro_error_without(row: &Row, slip: Slip, place: Place, limits: &Limits) -> Option<f64> {
     let sight = Sight::of(row, limits)?;
-    let context = Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], limits };
+    let context = Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], speed_kn: None, limits };
     let candidate = candidates(row, &sight, &context, &[]).into_iter().find(|c| c.slip == slip && c.place == place)?;
     let so = candidate.made(&Case::plain(sight))?.so;
     Some(wrap_180_deg(so.look()?.azimuth - so.gyro?))

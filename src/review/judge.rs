@@ -8,8 +8,7 @@ use super::order::apart;
 use super::pattern::PatternId;
 use super::query::{Instrument, Query};
 use super::row::Row;
-use super::run::Term;
-use super::slip::Explanation;
+use super::slip::{Explanation, Place};
 use super::vessel::Vessel;
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
@@ -70,7 +69,7 @@ pub fn judge(row: &Row, fleet: &Fleet) -> Verdict {
     }
     verdict.notices.extend(zone_odd(row, limits));
     slips(row, vessel, at, fact, limits, &mut verdict);
-    limits_of_errors(row, limits, &mut verdict);
+    limits_of_errors(row, vessel, fact, limits, &mut verdict);
     verdict.queries.sort_by(|a, b| b.weight().total_cmp(&a.weight()));
     verdict
 }
@@ -130,15 +129,7 @@ fn gyro(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ver
     // Within the run only because of what the gyro follows: then that is said.
     let Some(run) = vessel.gyro_of(fact.gyro).and_then(|g| g.run.as_ref()) else { return };
     for (term, what) in run.terms.iter().enumerate() {
-        let id = match what {
-            Term::Level => continue,
-            Term::Repeater(_) | Term::Side => PatternId::RepeaterDiffers,
-            Term::Speed => PatternId::SpeedCorrectorOff,
-            Term::Latitude => PatternId::LatitudeCorrectorOff,
-            Term::Altitude => PatternId::AzimuthCircleTilt,
-            Term::OnHorizon => PatternId::VisibleHorizon,
-            Term::Step(_) => PatternId::GyroStep,
-        };
+        let Some(id) = what.pattern() else { continue };
         let without = by_deg + run.part_deg(term, fact);
         if without.abs() > most_deg && !verdict.patterns.contains(&id) && vessel.patterns.iter().any(|p| p.id == id) {
             verdict.patterns.push(id);
@@ -197,6 +188,7 @@ fn slips(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
         return;
     }
     let mut context = vessel.context(at, fact.gyro, fact.compass, limits);
+    context.speed_kn = row.observation.and_then(|o| o.speed_kn);
     context.variation_off_deg = vessel.variation_off_deg(row);
     if let Some((slip, place)) = vessel.throughout {
         // Its neighbours carry the same slip and say nothing of order and track.
@@ -211,24 +203,46 @@ fn slips(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
     verdict.slips = explain(row, &context, bodies());
 }
 
-/// Errors over their limits; not where the row itself is in doubt, for then the error is not the compass's.
-fn limits_of_errors(row: &Row, limits: &Limits, verdict: &mut Verdict) {
-    if verdict.searched || row.observation.is_none() {
+/// Errors over their limits; not where the row itself is in doubt, for then the error is not the compass's. What a pattern of the
+/// vessel explains is said there.
+fn limits_of_errors(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, verdict: &mut Verdict) {
+    if verdict.searched || row.observation.is_none() || vessel.throughout.is_some_and(|(_, place)| place != Place::Working) {
         return;
     }
     let t = &limits.thresholds;
-    let mut over = |instrument, error_deg: f64, u_deg: f64, limit_deg: f64| {
+    if let (Some(error), Some(place)) = (row.worked.gyro_error, row.place) {
+        let cos_lat = place.position.lat.deg().to_radians().cos().max(0.05);
+        let limit_deg = t.gyro_settle_deg / cos_lat + t.gyro_margin_deg;
+        let (error_deg, u_deg) = (error.value.deg(), error.u_deg());
+        if error_deg.abs() - 2.0 * u_deg <= limit_deg {
+            verdict.notices.extend((error_deg.abs() > limit_deg).then_some(Notice::MayBeOverLimit { error_deg, limit_deg }));
+        } else if let Some(id) = explained(vessel, fact, |part| (error_deg - part).abs() - 2.0 * u_deg <= limit_deg) {
+            if !verdict.patterns.contains(&id) {
+                verdict.patterns.push(id);
+            }
+        } else {
+            verdict.queries.push(Query::OverLimit { instrument: Instrument::Gyro, error_deg, u_deg, limit_deg });
+        }
+    }
+    if let Some(deviation) = row.worked.deviation.or(row.worked.deviation_by_comparison) {
+        let (error_deg, u_deg, limit_deg) = (deviation.value.deg(), deviation.u_deg(), t.deviation_deg);
         if error_deg.abs() - 2.0 * u_deg > limit_deg {
-            verdict.queries.push(Query::OverLimit { instrument, error_deg, u_deg, limit_deg });
+            verdict.queries.push(Query::OverLimit { instrument: Instrument::MagneticCompass, error_deg, u_deg, limit_deg });
         } else if error_deg.abs() > limit_deg {
             verdict.notices.push(Notice::MayBeOverLimit { error_deg, limit_deg });
         }
-    };
-    if let (Some(error), Some(place)) = (row.worked.gyro_error, row.place) {
-        let cos_lat = place.position.lat.deg().to_radians().cos().max(0.05);
-        over(Instrument::Gyro, error.value.deg(), error.u_deg(), t.gyro_settle_deg / cos_lat + t.gyro_margin_deg);
     }
-    if let Some(deviation) = row.worked.deviation.or(row.worked.deviation_by_comparison) {
-        over(Instrument::MagneticCompass, deviation.value.deg(), deviation.u_deg(), t.deviation_deg);
+}
+
+/// The pattern of the gyro's run without whose part (degrees) `fits` holds.
+fn explained(vessel: &Vessel, fact: &Fact, fits: impl Fn(f64) -> bool) -> Option<PatternId> {
+    let run = vessel.gyro_of(fact.gyro)?.run.as_ref()?;
+    let parts = || run.terms.iter().enumerate().filter_map(|(term, what)| Some((what.pattern()?, run.part_deg(term, fact))));
+    let named = |id: PatternId| vessel.patterns.iter().any(|p| p.id == id);
+    if let Some((id, _)) = parts().find(|(id, part)| named(*id) && fits(*part)) {
+        return Some(id);
     }
+    let all: f64 = parts().filter(|(id, _)| named(*id)).map(|(_, part)| part).sum();
+    let largest = parts().filter(|(id, _)| named(*id)).max_by(|a, b| a.1.abs().total_cmp(&b.1.abs()));
+    largest.filter(|_| fits(all)).map(|(id, _)| id)
 }

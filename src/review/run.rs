@@ -1,6 +1,7 @@
 //! A gyro's run: its level, what it follows, its steps, and its slow drift, from its own rows.
 
 use super::fact::{Fact, flag};
+use super::pattern::PatternId;
 use super::robust::{self, Fit, median, scale_of_neighbours};
 use crate::limits::Limits;
 
@@ -37,6 +38,19 @@ impl Term {
             Self::OnHorizon => fact.on_horizon(),
             Self::Side => (yes(fact.has(flag::STARBOARD)) - yes(fact.has(flag::PORT))) / 2.0,
             Self::Step(at) => yes(fact.seconds().is_some_and(|t| t >= at)),
+        }
+    }
+
+    /// The pattern that it is named by.
+    pub fn pattern(self) -> Option<PatternId> {
+        match self {
+            Self::Level => None,
+            Self::Repeater(_) | Self::Side => Some(PatternId::RepeaterDiffers),
+            Self::Speed => Some(PatternId::SpeedCorrectorOff),
+            Self::Latitude => Some(PatternId::LatitudeCorrectorOff),
+            Self::Altitude => Some(PatternId::AzimuthCircleTilt),
+            Self::OnHorizon => Some(PatternId::VisibleHorizon),
+            Self::Step(_) => Some(PatternId::GyroStep),
         }
     }
 

@@ -149,6 +149,7 @@ impl Vessel {
             before: earlier_rows.iter().rev().find(sound),
             after: self.facts.get(at + 1..).unwrap_or_default().iter().find(sound),
             earlier: earlier_rows.get(at.saturating_sub(EARLIER)..).unwrap_or_default(),
+            speed_kn: None,
             limits,
         }
     }

@@ -44,6 +44,7 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
             before: None,
             after: None,
             earlier: &[],
+            speed_kn: kept.row().observation.and_then(|o| o.speed_kn),
             limits,
         };
         for (rank, e) in explain(&kept.row(), &context, bodies()).iter().filter(|e| e.with.is_none()).enumerate() {
