@@ -105,22 +105,30 @@ fn far_from_horizon(row: &Row, event: RisingOrSetting, limits: &Limits) -> Optio
     }
 }
 
-/// Logged azimuth less the recomputed one, degrees.
-pub fn azimuth_off_deg(row: &Row) -> Option<f64> {
-    Some(wrap_180_deg(row.logged.azimuth?.deg - row.worked.true_azimuth?.deg()))
+/// Logged azimuth less the recomputed one, degrees. Where it is not written, a bearing and its logged error say what it was.
+fn azimuth_off_deg(row: &Row) -> Option<f64> {
+    let (logged, observation) = (row.logged, row.observation?);
+    let by_gyro = || Some(observation.gyro_bearing?.value.deg() + logged.gyro_error?.deg);
+    let by_compass = || Some(observation.compass_bearing?.value.deg() + logged.compass_error?.deg);
+    let azimuth = logged.azimuth.map(|a| a.deg).or_else(by_gyro).or_else(by_compass)?;
+    Some(wrap_180_deg(azimuth - row.worked.true_azimuth?.deg()))
 }
 
 /// Each logged error less what its own logged parts give, with the step it is written in.
 pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
     let logged = row.logged;
     let Some(observation) = row.observation else { return [None; 3] };
-    let azimuth = logged.azimuth.map(|a| a.deg).or_else(|| match observation.target {
+    let charted = match observation.target {
         Target::Mark { charted, .. } => Some(charted.deg()),
         _ => None,
-    });
+    };
+    let azimuth = logged.azimuth.map(|a| a.deg).or(charted);
+    // Where the azimuth is not written, the gyro's bearing and error say what it was.
+    let by_gyro = || observation.gyro_bearing.zip(logged.gyro_error).map(|(b, e)| b.value.deg() + e.deg);
     let less = |figure: Option<Written>, parts: Option<f64>| Some((wrap_180_deg(figure?.deg - parts?), figure?.step_deg));
     let gyro = less(logged.gyro_error, azimuth.zip(observation.gyro_bearing).map(|(a, b)| a - b.value.deg()));
-    let by_bearing = less(logged.compass_error, azimuth.zip(observation.compass_bearing).map(|(a, b)| a - b.value.deg()));
+    let by_bearing =
+        less(logged.compass_error, azimuth.or_else(by_gyro).zip(observation.compass_bearing).map(|(a, b)| a - b.value.deg()));
     let by_headings = less(
         logged.compass_error,
         logged
@@ -132,7 +140,9 @@ pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
     // Either route will do.
     let compass = match (by_bearing, by_headings) {
         (Some(a), Some(b)) => Some(if b.0.abs() < a.0.abs() { b } else { a }),
-        (a, b) => a.or(b),
+        (Some(a), None) => Some(a),
+        // A bearing read, and no azimuth to work it with: nothing to compare with.
+        (None, b) => b.filter(|_| observation.compass_bearing.is_none()),
     };
     let deviation = less(logged.deviation, logged.compass_error.zip(logged.variation).map(|(e, v)| e.deg - v.deg));
     [
@@ -140,6 +150,20 @@ pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
         compass.map(|(by, step)| (Sum::CompassError, by, step)),
         deviation.map(|(by, step)| (Sum::Deviation, by, step)),
     ]
+}
+
+/// Whether all that is asked of a row is arithmetic off by no more than the rounding of its own readings: the errors were worked
+/// from readings finer than those written.
+pub fn unrounded(row: &Row, queries: &[Query]) -> bool {
+    let Some(observation) = row.observation else { return false };
+    let gyro = observation.gyro_bearing.map_or(0.0, |b| b.step_deg);
+    let compass = observation.compass_bearing.map_or(0.0, |b| b.step_deg);
+    !queries.is_empty()
+        && queries.iter().all(|q| match q {
+            // Half the step, and the rounding of the result.
+            Query::Arithmetic { by_deg, .. } => by_deg.abs() <= gyro.max(compass).max(0.5) / 2.0 + 0.06,
+            _ => false,
+        })
 }
 
 /// What the sky says to the reason given for having no observation. Cloud is never contradicted.

@@ -14,7 +14,7 @@ const MOST: usize = 6;
 /// An explanation is dropped when it fits worse than the best by this (sum of squares): odds of one to ten thousand.
 const DROP: f64 = 18.0;
 /// A slip must explain this much more than none (sum of squares), for a slip is seldom.
-const GAIN: f64 = 9.0;
+pub const GAIN: f64 = 9.0;
 /// Singles that are tried with every other for a pair.
 const PAIR_FROM: usize = 10;
 /// What a pair pays for being two of many.
@@ -47,8 +47,8 @@ fn price(candidate: &Candidate) -> f64 {
     2.0 * (candidate.forms.max(1) as f64).ln()
 }
 
-/// The slips that explain `row`, best first; none where nothing does.
-pub fn explain(row: &Row, context: &Context, bodies: &[Body]) -> Vec<Explanation> {
+/// The slips that explain `row` better by `gain` than none does, best first; none where nothing does.
+pub fn explain(row: &Row, context: &Context, bodies: &[Body], gain: f64) -> Vec<Explanation> {
     let Some(sight) = Sight::of(row, context.limits) else { return Vec::new() };
     let plain = Case::plain(sight);
     // Where the record has no azimuth at all (it never rises there), everything else is better than it.
@@ -59,7 +59,7 @@ pub fn explain(row: &Row, context: &Context, bodies: &[Body]) -> Vec<Explanation
     let list = candidates(row, &sight, context, bodies);
     let mut tried: Vec<Tried> = list.iter().filter_map(|c| attempt(row, &plain, c, context)).collect();
     tried.sort_by(|a, b| a.total().total_cmp(&b.total()));
-    let singles: Vec<&Tried> = tried.iter().filter(|t| serves(t.raw, t.count) && t.total() + GAIN < none).collect();
+    let singles: Vec<&Tried> = tried.iter().filter(|t| serves(t.raw, t.count) && t.total() + gain < none).collect();
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
     let mut found: Vec<Explanation> = Vec::new();
     let Some(best) = singles.first().map(|t| t.total()) else {

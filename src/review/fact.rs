@@ -1,4 +1,4 @@
-//! What is kept of each row between the two passes: 32 bytes.
+//! What is kept of each row between the two passes: 28 bytes.
 
 use super::row::Row;
 use crate::angle::wrap_180_deg;
@@ -13,14 +13,17 @@ const EPOCH_MS: i64 = 946_684_800_000;
 const STEP_MS: i64 = 2000;
 /// Hundredths of a degree.
 const CENTI: f64 = 100.0;
-/// Uncertainties are kept in fiftieths of a degree.
-const U_STEPS: f64 = 50.0;
 /// Steps of the kept horizontal intensity, nanotesla.
 const FIELD_STEP_NT: f64 = 300.0;
 /// Degrees of longitude for one step of the kept position: 0.33'.
 const PLACE_STEP: f64 = 180.0 / 32_767.0;
 /// Equatorial speed that the gyro's speed error is reckoned with, in knots a degree: 900 pi / 180.
 const SPEED_ERROR_KN: f64 = 5.0 * PI;
+
+/// Set beside the index of the magnetic compass where the row by itself raises a query.
+const AFFECTED: u8 = 128;
+/// Magnetic compasses of one vessel that can be told apart.
+pub const MOST_COMPASSES: usize = 127;
 
 /// Marks of a kept row.
 pub mod flag {
@@ -55,16 +58,13 @@ pub struct Fact {
     compass_heading: u16,
     speed_error: i16,
     on_horizon: i16,
-    variation_off: i16,
     altitude: i8,
     inclination: i8,
     horizontal: u8,
     /// Index of gyro and repeater among the vessel's.
     pub gyro: u8,
-    /// Index of the magnetic compass among the vessel's.
-    pub compass: u8,
-    gyro_u: u8,
-    deviation_u: u8,
+    /// Index of the magnetic compass among the vessel's, and [`AFFECTED`].
+    compass: u8,
     /// Marks.
     pub flags: u8,
 }
@@ -79,7 +79,7 @@ fn from_centi(kept: i16) -> Option<f64> {
 
 impl Fact {
     /// What is kept of `row`.
-    pub fn of(row: &Row, gyro: u8, compass: u8) -> Self {
+    pub fn of(row: &Row, gyro: u8, compass: u8, affected: bool) -> Self {
         let worked = row.worked;
         let mut flags = 0;
         let steps = row.moment.map_or(0, |m| {
@@ -99,7 +99,7 @@ impl Fact {
         if let (Some(azimuth), Some(heading)) = (worked.true_azimuth, true_heading) {
             flags |= if wrap_180_deg(azimuth.deg() - heading) >= 0.0 { flag::STARBOARD } else { flag::PORT };
         }
-        let (deviation, deviation_u, lacks_gyro) = deviation(row);
+        let (deviation, lacks_gyro) = deviation(row);
         if lacks_gyro {
             flags |= flag::LACKS_GYRO;
         }
@@ -110,12 +110,10 @@ impl Fact {
             }
             _ => 0.0,
         };
-        let variation_off = row.logged.variation.zip(worked.variation).map(|(l, v)| wrap_180_deg(l.deg - v.value.deg()));
         let altitude = match row.observation.map(|o| o.target) {
             Some(Target::Body(_)) => worked.at_time.map_or(0.0, |h| h.altitude_deg),
             _ => 0.0,
         };
-        let u8_of = |u: f64| (u * U_STEPS).round().clamp(0.0, 255.0) as u8;
         Self {
             number: row.number as u32,
             steps,
@@ -129,20 +127,27 @@ impl Fact {
                 .map_or(NO_HEADING, |h| (h.value.deg() * CENTI).round() as u16),
             speed_error: centi(speed_error),
             on_horizon: centi(Some(on_horizon)),
-            variation_off: centi(variation_off),
             altitude: altitude.round() as i8,
             inclination: worked.field.map_or(0, |f| f.inclination_deg.round() as i8),
             horizontal: worked.field.map_or(0, |f| (f.horizontal_nt / FIELD_STEP_NT).round().clamp(0.0, 255.0) as u8),
             gyro,
-            compass,
-            gyro_u: u8_of(worked.gyro_error.map_or(0.0, |g| g.u_deg())),
-            deviation_u: u8_of(deviation_u),
+            compass: if affected { compass | AFFECTED } else { compass },
             flags,
         }
     }
 
     pub fn has(&self, flag: u8) -> bool {
         self.flags & flag != 0
+    }
+
+    /// Index of the magnetic compass among the vessel's.
+    pub fn compass(&self) -> u8 {
+        self.compass & !AFFECTED
+    }
+
+    /// The row by itself raises a query.
+    pub fn affected(&self) -> bool {
+        self.compass & AFFECTED != 0
     }
 
     /// Seconds from the start of 2000, to 2 s.
@@ -164,17 +169,9 @@ impl Fact {
         from_centi(self.gyro_error)
     }
 
-    pub fn gyro_u_deg(&self) -> f64 {
-        f64::from(self.gyro_u) / U_STEPS
-    }
-
     /// Deviation; without the gyro's error where [`flag::LACKS_GYRO`] is set.
     pub fn deviation_deg(&self) -> Option<f64> {
         from_centi(self.deviation)
-    }
-
-    pub fn deviation_u_deg(&self) -> f64 {
-        f64::from(self.deviation_u) / U_STEPS
     }
 
     pub fn compass_heading_deg(&self) -> Option<f64> {
@@ -199,11 +196,6 @@ impl Fact {
         from_centi(self.on_horizon).unwrap_or(0.0)
     }
 
-    /// Logged variation less the model's, degrees.
-    pub fn variation_off_deg(&self) -> Option<f64> {
-        from_centi(self.variation_off)
-    }
-
     /// Horizontal intensity, nanotesla, and inclination, degrees.
     pub fn field(&self) -> Option<(f64, f64)> {
         (self.horizontal != 0).then(|| (f64::from(self.horizontal) * FIELD_STEP_NT, f64::from(self.inclination)))
@@ -219,17 +211,16 @@ fn speed_error_deg(observation: &Observation, true_heading: f64) -> Option<f64> 
     Some(observation.speed_kn? * true_heading.to_radians().cos() / (SPEED_ERROR_KN * cos_lat))
 }
 
-/// Deviation and its u, by bearing or by comparison; and whether the gyro's error is still missing in it.
-fn deviation(row: &Row) -> (Option<f64>, f64, bool) {
+/// Deviation by bearing or by comparison, and whether the gyro's error is still missing in it.
+fn deviation(row: &Row) -> (Option<f64>, bool) {
     if let Some(deviation) = row.worked.deviation.or(row.worked.deviation_by_comparison) {
-        return (Some(deviation.value.deg()), deviation.u_deg(), false);
+        return (Some(deviation.value.deg()), false);
     }
     let by_headings = row.observation.and_then(|o| {
         let (gyro, compass) = (o.gyro_heading?, o.compass_heading?);
         Some(wrap_180_deg(gyro.value.deg() - compass.value.deg() - row.worked.variation?.value.deg()))
     });
-    // Headings read together to 0.7, with the gyro's run and the variation.
-    (by_headings, 1.0, by_headings.is_some())
+    (by_headings, by_headings.is_some())
 }
 
 #[cfg(test)]
@@ -237,7 +228,7 @@ mod tests {
     use super::*;
 
     #[test]
-    fn a_kept_row_is_32_bytes() {
-        assert_eq!(size_of::<Fact>(), 32);
+    fn a_kept_row_is_small() {
+        assert_eq!(size_of::<Fact>(), 28);
     }
 }

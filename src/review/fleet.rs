@@ -15,7 +15,6 @@ use std::sync::OnceLock;
 pub struct Fleet {
     vessels: Vec<Vessel>,
     by_name: HashMap<String, usize>,
-    pub(super) rows: u64,
     pub(super) limits: Limits,
 }
 
@@ -29,8 +28,8 @@ pub(super) fn bodies() -> &'static [Body] {
 }
 
 impl Fleet {
-    pub(super) fn new(vessels: Vec<Vessel>, by_name: HashMap<String, usize>, rows: u64, limits: Limits) -> Self {
-        Self { vessels, by_name, rows, limits }
+    pub(super) fn new(vessels: Vec<Vessel>, by_name: HashMap<String, usize>, limits: Limits) -> Self {
+        Self { vessels, by_name, limits }
     }
 
     pub(super) fn vessels(&self) -> &[Vessel] {

@@ -1,7 +1,7 @@
 //! The second pass: one row against what the fleet's rows say together.
 
-use super::checks::row_queries;
-use super::explain::explain;
+use super::checks::{row_queries, unrounded};
+use super::explain::{GAIN, explain};
 use super::fact::{Fact, flag};
 use super::fleet::{Fleet, bodies};
 use super::order::apart;
@@ -68,6 +68,12 @@ pub fn judge(row: &Row, fleet: &Fleet) -> Verdict {
         }
     }
     verdict.notices.extend(zone_odd(row, limits));
+    if let Some(id) = vessel.unrounded
+        && unrounded(row, &verdict.queries)
+    {
+        verdict.queries.clear();
+        verdict.patterns.push(id);
+    }
     slips(row, vessel, at, fact, limits, &mut verdict);
     limits_of_errors(row, vessel, fact, limits, &mut verdict);
     verdict.queries.sort_by(|a, b| b.weight().total_cmp(&a.weight()));
@@ -145,7 +151,7 @@ fn compass(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, verdict: &m
         verdict.queries.push(Query::CardOutOfDate { months, most_months: t.card_months });
     }
     let Some(deviation) = row.worked.deviation.or(row.worked.deviation_by_comparison) else { return };
-    let curve = vessel.curve(fact.compass);
+    let curve = vessel.curve(fact.compass());
     let heading = row.observation.and_then(|o| o.compass_heading).map(|h| h.value.deg());
     let field = row.worked.field.map(|f| (f.horizontal_nt, f.inclination_deg));
     let fitted = curve.zip(heading).zip(field).map(|((c, h), f)| c.at(h, f));
@@ -156,7 +162,7 @@ fn compass(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, verdict: &m
     };
     let by_deg = wrap_180_deg(deviation.value.deg() - expected);
     let most_deg = t.off_card_deg.max(t.out_of_run_sigma * scatter.max(deviation.u_deg()));
-    let on_days = !card || by_deg.abs() > t.off_card_once_deg || vessel.off_card_days.contains(&fact.compass);
+    let on_days = !card || by_deg.abs() > t.off_card_once_deg || vessel.off_card_days.contains(&fact.compass());
     if by_deg.abs() > most_deg && on_days {
         verdict.queries.push(Query::OffCard { by_deg, most_deg, card });
     }
@@ -187,20 +193,20 @@ fn slips(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
     if row.observation.is_none() || !verdict.queries.iter().any(answerable) {
         return;
     }
-    let mut context = vessel.context(at, fact.gyro, fact.compass, limits);
+    let mut context = vessel.context(at, fact.gyro, fact.compass(), limits);
     context.speed_kn = row.observation.and_then(|o| o.speed_kn);
     context.variation_off_deg = vessel.variation_off_deg(row);
     if let Some((slip, place)) = vessel.throughout {
         // Its neighbours carry the same slip and say nothing of order and track.
         let alone = super::evidence::Context { before: None, after: None, earlier: &[], ..context };
-        if explain(row, &alone, bodies()).iter().any(|e| e.with.is_none() && e.slip == slip && e.place == place) {
+        if explain(row, &alone, bodies(), 0.0).iter().any(|e| e.with.is_none() && e.slip == slip && e.place == place) {
             verdict.queries.retain(|q| !answerable(q));
             verdict.patterns.insert(0, PatternId::SameSlipThroughout);
             return;
         }
     }
     verdict.searched = true;
-    verdict.slips = explain(row, &context, bodies());
+    verdict.slips = explain(row, &context, bodies(), GAIN);
 }
 
 /// Errors over their limits; not where the row itself is in doubt, for then the error is not the compass's. What a pattern of the

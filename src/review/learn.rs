@@ -1,7 +1,7 @@
 //! The first pass: every row fed once, little of it kept.
 
-use super::checks::row_queries;
-use super::fact::Fact;
+use super::checks::{row_queries, unrounded};
+use super::fact::{Fact, MOST_COMPASSES};
 use super::fleet::Fleet;
 use super::query::Query;
 use super::row::{CardFigure, Logged, Names, Row};
@@ -27,7 +27,6 @@ pub struct Learn {
     limits: Limits,
     vessels: Vec<Logbook>,
     by_name: HashMap<String, usize>,
-    rows: u64,
     queries: Vec<Query>,
 }
 
@@ -44,6 +43,8 @@ pub struct Logbook {
     recent: Vec<(u64, u64)>,
     pub observations: u64,
     pub affected: u64,
+    /// Rows whose logged errors are off their parts by no more than the readings' own rounding.
+    pub unrounded: u64,
     pub sample: Vec<Kept>,
     /// Of the gyro bearings and of the compass bearings.
     pub gyro_steps: Steps,
@@ -99,9 +100,8 @@ pub struct Kept {
     logged: Logged,
     card: Option<CardFigure>,
     worked: Worked,
-    /// Indices among the vessel's.
+    /// Index of gyro and repeater among the vessel's.
     pub gyro: u8,
-    pub compass: u8,
 }
 
 impl Kept {
@@ -132,12 +132,11 @@ fn scattered(mut z: u64) -> u64 {
 impl Learn {
     /// Nothing learned yet.
     pub fn new(limits: Limits) -> Self {
-        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), rows: 0, queries: Vec::new() }
+        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new() }
     }
 
     /// Learns one row.
     pub fn feed(&mut self, row: &Row) {
-        self.rows += 1;
         let at = match self.by_name.get(row.names.vessel) {
             Some(at) => *at,
             None => {
@@ -149,9 +148,11 @@ impl Learn {
         };
         self.queries.clear();
         row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
-        let affected = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG)
-            || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. }));
+        let unrounded = unrounded(row, &self.queries);
+        let affected = !unrounded && row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG)
+            || !unrounded && self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. }));
         if let Some(vessel) = self.vessels.get_mut(at) {
+            vessel.unrounded += u64::from(unrounded);
             vessel.feed(row, affected);
         }
     }
@@ -159,14 +160,14 @@ impl Learn {
     /// What the rows say together.
     pub fn finish(self) -> Fleet {
         let vessels = self.vessels.into_iter().map(|book| Vessel::of(book, &self.limits)).collect();
-        Fleet::new(vessels, self.by_name, self.rows, self.limits)
+        Fleet::new(vessels, self.by_name, self.limits)
     }
 }
 
-/// Index of `name` among `names`, added where it is new; the last one where there are more than can be told apart.
-fn index<T: PartialEq>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -> T) -> u8 {
+/// Index of a name among `names`, added where it is new; the last one where there are more than can be told apart.
+fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -> T) -> u8 {
     let at = names.iter().position(same).unwrap_or_else(|| {
-        if names.len() < usize::from(u8::MAX) {
+        if names.len() < MOST_COMPASSES {
             names.push(make());
         }
         names.len() - 1
@@ -183,7 +184,7 @@ impl Logbook {
             || (names.gyro.to_owned(), names.repeater.to_owned()),
         );
         let compass = index(&mut self.compasses, |c| c == names.magnetic_compass, || names.magnetic_compass.to_owned());
-        self.facts.push(Fact::of(row, gyro, compass));
+        self.facts.push(Fact::of(row, gyro, compass, affected));
         self.copy_of_an_earlier(row);
         let Some(observation) = row.observation else { return };
         self.observations += 1;
@@ -206,12 +207,12 @@ impl Logbook {
         }
         if affected {
             self.affected += 1;
-            self.keep(row, observation, gyro, compass);
+            self.keep(row, observation, gyro);
         }
     }
 
     /// Keeps an even sample of the affected rows, the same whatever their order.
-    fn keep(&mut self, row: &Row, observation: &Observation, gyro: u8, compass: u8) {
+    fn keep(&mut self, row: &Row, observation: &Observation, gyro: u8) {
         let order = scattered(row.number);
         if self.sample.len() >= SAMPLE {
             match self.sample.last() {
@@ -232,7 +233,6 @@ impl Logbook {
             card: row.card,
             worked,
             gyro,
-            compass,
         };
         self.sample.insert(at, kept);
     }

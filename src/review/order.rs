@@ -53,9 +53,40 @@ fn mark_order(facts: &mut [Fact]) {
         }
         at = before.get(place).copied().flatten();
     }
+    prefer_sound(facts, &timed, &mut kept);
     for ((row, _), kept) in timed.iter().zip(kept) {
         if !kept && let Some(fact) = facts.get_mut(*row) {
             fact.flags |= flag::OUT_OF_ORDER;
+        }
+    }
+}
+
+/// Where either of two neighbours could go, the one that raises a query by itself goes.
+fn prefer_sound(facts: &[Fact], timed: &[(usize, i64)], kept: &mut [bool]) {
+    let affected = |at: usize| timed.get(at).and_then(|t| facts.get(t.0)).is_some_and(Fact::affected);
+    let time = |at: usize| timed.get(at).map(|t| t.1);
+    for out in 0..timed.len() {
+        if kept.get(out).copied().unwrap_or(true) || affected(out) {
+            continue;
+        }
+        for other in [out.checked_sub(1), Some(out + 1)].into_iter().flatten() {
+            if !kept.get(other).copied().unwrap_or(false) || !affected(other) {
+                continue;
+            }
+            let (first, last) = (out.min(other), out.max(other));
+            let before = (0..first).rev().find(|&i| kept.get(i).copied().unwrap_or(false)).and_then(time);
+            let after = (last + 1..timed.len()).find(|&i| kept.get(i).copied().unwrap_or(false)).and_then(time);
+            let now = time(out);
+            let fits = before.is_none_or(|b| now.is_some_and(|n| b <= n)) && after.is_none_or(|a| now.is_some_and(|n| n <= a));
+            if fits {
+                if let Some(k) = kept.get_mut(out) {
+                    *k = true;
+                }
+                if let Some(k) = kept.get_mut(other) {
+                    *k = false;
+                }
+                break;
+            }
         }
     }
 }

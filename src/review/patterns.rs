@@ -37,6 +37,7 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
         constant_a(vessel, book, limits);
         settle(vessel, PatternId::TooRegular, |v| regular::judge(v, book, limits));
     }
+    unrounded(vessel, book);
     settle(vessel, PatternId::WatchesWithoutEntry, |v| watches::judge(v, limits));
     let rank = |id: PatternId| PatternId::ALL.iter().position(|p| *p == id);
     vessel.patterns.sort_by_key(|p| rank(p.id));
@@ -48,6 +49,28 @@ fn settle(vessel: &mut Vessel, id: PatternId, judge: impl FnOnce(&Vessel) -> Ans
         Answer::Found(pattern) => vessel.patterns.push(pattern),
         Answer::NotSo => {}
         Answer::CannotTell(why) => vessel.not_evaluated.push(NotEvaluated { id, why }),
+    }
+}
+
+/// Share of observations from which errors worked from finer readings are a habit.
+const HABIT: f64 = 0.2;
+
+/// Errors worked from readings finer than those written: said once, with the regularity that it goes with where that is found.
+fn unrounded(vessel: &mut Vessel, book: &Logbook) {
+    if book.unrounded < 8 || (book.unrounded as f64) < HABIT * book.observations as f64 {
+        return;
+    }
+    let words = format!(
+        "Are the errors worked from bearings finer than those written? On {} of {} observations they are off their own parts by no more than half a step.",
+        book.unrounded, book.observations
+    );
+    if let Some(regular) = vessel.patterns.iter_mut().find(|p| p.id == PatternId::TooRegular) {
+        regular.detail.push(' ');
+        regular.detail.push_str(&words);
+        vessel.unrounded = Some(PatternId::TooRegular);
+    } else {
+        vessel.patterns.push(Pattern { id: PatternId::SameSlipThroughout, detail: words, since: None });
+        vessel.unrounded = Some(PatternId::SameSlipThroughout);
     }
 }
 

@@ -63,6 +63,11 @@ impl Term {
         }
     }
 
+    /// Standard deviations that it must stand out by. What shows on a few rows only, and is looked for by its own shape, less.
+    fn sure(self) -> f64 {
+        if self == Self::OnHorizon { 4.5 } else { 6.0 }
+    }
+
     /// The least coefficient, and the least effect over the middle nine tenths of the rows (degrees), that is worth naming.
     fn least(self) -> (f64, f64) {
         match self {
@@ -77,8 +82,6 @@ impl Term {
     }
 }
 
-/// Standard deviations that a term must stand out by.
-const SURE: f64 = 6.0;
 /// Residuals are cut to this before something is looked for in them, degrees, so that slips of a hundred degrees weigh as others.
 const CUT_DEG: f64 = 4.0;
 /// Fewest rows for a run.
@@ -129,7 +132,7 @@ impl Run {
             with.push(found);
             let better = fit_terms(&with, &facts)?;
             let (coefficient, u) = (better.coefficients.last().copied().unwrap_or(0.0).abs(), better.u(with.len() - 1));
-            if coefficient > found.least().0 && coefficient > (SURE - 1.0) * u && better.scale <= fit.scale * 1.02 {
+            if coefficient > found.least().0 && coefficient > (found.sure() - 1.0) * u && better.scale <= fit.scale * 1.02 {
                 terms = with;
                 fit = better;
             } else {
@@ -203,7 +206,7 @@ fn residuals(terms: &[Term], fit: &Fit, facts: &[&Fact]) -> Vec<f64> {
 fn strongest(have: &[Term], refused: &[Term], facts: &[&Fact], residuals: &[f64], noise: f64, sides: bool) -> Option<Term> {
     let mut best: Option<(f64, Term)> = None;
     let mut offer = |z: f64, term: Term| {
-        if z > SURE && best.is_none_or(|(b, _)| z > b) {
+        if z > term.sure() && best.is_none_or(|(b, _)| z > b) {
             best = Some((z, term));
         }
     };
@@ -211,8 +214,9 @@ fn strongest(have: &[Term], refused: &[Term], facts: &[&Fact], residuals: &[f64]
         if have.contains(&term) || refused.contains(&term) || (term == Term::Side && !sides) {
             continue;
         }
-        let x: Vec<f64> = facts.iter().map(|f| term.value(f)).collect();
-        if let Some((slope, u, spread)) = slope_by_classes(&x, residuals, noise) {
+        let (x, y): (Vec<f64>, Vec<f64>) =
+            facts.iter().map(|f| term.value(f)).zip(residuals.iter().copied()).filter(|(x, _)| term != Term::OnHorizon || *x != 0.0).unzip();
+        if let Some((slope, u, spread)) = slope_by_classes(&x, &y, noise) {
             let (least, least_effect) = term.least();
             if slope.abs() > least && slope.abs() * spread > least_effect {
                 offer(slope.abs() / u, term);
@@ -234,6 +238,9 @@ const CLASSES: usize = 8;
 /// Slope of y on x through the medians of classes of x, its standard uncertainty, and the spread of x over nine tenths of the
 /// rows. Up to half of each class may be anything.
 fn slope_by_classes(x: &[f64], y: &[f64], noise: f64) -> Option<(f64, f64, f64)> {
+    if x.len() < CLASSES {
+        return None;
+    }
     let mut order: Vec<usize> = (0..x.len()).collect();
     order.sort_by(|a, b| x.get(*a).zip(x.get(*b)).map_or(std::cmp::Ordering::Equal, |(a, b)| a.total_cmp(b)));
     let value = |at: usize| order.get(at).and_then(|&i| x.get(i)).copied();

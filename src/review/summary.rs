@@ -214,7 +214,7 @@ fn gyros(v: &Vessel) -> Vec<GyroSummary> {
 }
 
 fn compass(v: &Vessel, at: usize, name: &str) -> Option<CompassSummary> {
-    let headings = v.facts.iter().filter(|f| usize::from(f.compass) == at).any(|f| f.compass_heading_deg().is_some());
+    let headings = v.facts.iter().filter(|f| usize::from(f.compass()) == at).any(|f| f.compass_heading_deg().is_some());
     if !headings {
         return None;
     }
@@ -235,7 +235,7 @@ fn compass(v: &Vessel, at: usize, name: &str) -> Option<CompassSummary> {
 /// Without a curve, the sectors without a heading all the same.
 fn seen_sectors(v: &Vessel, at: usize) -> Vec<(f64, f64)> {
     let mut seen = [false; 360 / SECTOR_DEG];
-    for fact in v.facts.iter().filter(|f| usize::from(f.compass) == at && f.deviation_deg().is_some()) {
+    for fact in v.facts.iter().filter(|f| usize::from(f.compass()) == at && f.deviation_deg().is_some()) {
         if let Some(slot) = fact.compass_heading_deg().and_then(|h| seen.get_mut(h as usize / SECTOR_DEG)) {
             *slot = true;
         }

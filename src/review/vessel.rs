@@ -5,7 +5,7 @@ use super::evidence::{Context, UNKNOWN_GYRO};
 use super::fact::{Fact, flag};
 use super::learn::Logbook;
 use super::order;
-use super::pattern::{NotEvaluated, Pattern};
+use super::pattern::{NotEvaluated, Pattern, PatternId};
 use super::patterns;
 use super::robust::median;
 use super::row::Row;
@@ -38,7 +38,6 @@ pub struct Gyro {
 #[derive(Debug, Clone)]
 pub struct Vessel {
     pub name: String,
-    pub rows: u64,
     pub observations: u64,
     /// Gyro and repeater.
     pub gyros: Vec<(String, String)>,
@@ -53,6 +52,8 @@ pub struct Vessel {
     pub variation_off: (f64, f64),
     /// The slip made on nearly all affected rows.
     pub throughout: Option<(Slip, Place)>,
+    /// The pattern that errors worked from finer readings belong to, where that is the habit.
+    pub unrounded: Option<PatternId>,
     /// Compasses whose deviation was off a given card on three separate days.
     pub off_card_days: Vec<u8>,
 }
@@ -66,7 +67,6 @@ impl Vessel {
         let curves = curves(&book, &runs);
         let mut vessel = Self {
             name: std::mem::take(&mut book.name),
-            rows: book.facts.len() as u64,
             observations: book.observations,
             gyros: std::mem::take(&mut book.gyros),
             runs,
@@ -78,7 +78,8 @@ impl Vessel {
             not_evaluated: Vec::new(),
             variation_off: (0.0, 0.0),
             throughout: None,
-            off_card_days: Vec::new(),
+            unrounded: None,
+            off_card_days: off_card_days(&book, limits),
         };
         patterns::find(&mut vessel, &book, limits);
         vessel
@@ -190,7 +191,7 @@ fn curves(book: &Logbook, runs: &[Gyro]) -> Vec<Option<Curve>> {
             let points: Vec<(&Fact, f64)> = book
                 .facts
                 .iter()
-                .filter(|f| usize::from(f.compass) == compass && !f.has(flag::OUT_OF_ORDER) && !f.has(flag::TOO_FAR))
+                .filter(|f| usize::from(f.compass()) == compass && !f.has(flag::OUT_OF_ORDER) && !f.has(flag::TOO_FAR))
                 .filter_map(|f| {
                     let deviation = f.deviation_deg()?;
                     if !f.has(flag::LACKS_GYRO) {
@@ -202,6 +203,23 @@ fn curves(book: &Logbook, runs: &[Gyro]) -> Vec<Option<Curve>> {
                 })
                 .collect();
             Curve::of(&points)
+        })
+        .collect()
+}
+
+/// Compasses whose deviation was off the card on three separate days.
+fn off_card_days(book: &Logbook, limits: &Limits) -> Vec<u8> {
+    (0..book.compasses.len() as u8)
+        .filter(|&compass| {
+            let mut days: Vec<i32> = book
+                .against_card
+                .iter()
+                .filter(|(c, off, _)| *c == compass && f64::from(off.abs()) > limits.thresholds.off_card_deg)
+                .map(|(_, _, day)| *day)
+                .collect();
+            days.sort_unstable();
+            days.dedup();
+            days.len() >= 3
         })
         .collect()
 }

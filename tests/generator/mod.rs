@@ -11,6 +11,6 @@ mod write;
 
 pub use rng::Rng;
 pub use ship::{Kind, Ship};
-pub use slips::{SLIPS, Where};
-pub use voyage::{Entry, Style, Truth, voyage};
-pub use write::{Columns, Log, csv};
+pub use slips::Where;
+pub use voyage::Style;
+pub use write::{Columns, Log, csv, shows};

@@ -91,6 +91,12 @@ pub struct Ship {
 impl Ship {
     /// A vessel of that kind, drawn from `rng`.
     pub fn draw(name: &str, kind: Kind, lat_band: (f64, f64), rng: &mut Rng) -> Self {
+        // What shows only in some latitudes is put there.
+        let lat_band = match kind {
+            Kind::VisibleHorizon => (32.0, 58.0),
+            Kind::LatitudeCorrectorOff => (-50.0, 50.0),
+            _ => lat_band,
+        };
         let lat = rng.between(lat_band.0 + 3.0, lat_band.1 - 3.0);
         Self {
             name: name.to_owned(),

@@ -113,7 +113,7 @@ pub fn inject(ship: &Ship, before: &[Entry], entry: &mut Entry, style: Style, rn
         let (slip, place) = rng.pick(&SLIPS);
         let mut tried = entry.clone();
         if let Some(shift_deg) = apply(slip, place, ship, before, &mut tried, style, rng) {
-            tried.truth = Truth { slip: Some(slip), place, shift_deg: shift_deg.abs() };
+            tried.truth = Truth { slip: Some(slip), place, shift_deg: shift_deg.abs(), without: Some(Box::new(entry.clone())) };
             *entry = tried;
             return;
         }

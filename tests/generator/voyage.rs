@@ -29,12 +29,14 @@ impl Default for Style {
 }
 
 /// What was so, whatever was written.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone)]
 pub struct Truth {
     pub slip: Option<&'static str>,
     pub place: Where,
     /// What the slip moves, degrees.
     pub shift_deg: f64,
+    /// The entry as it would be without.
+    pub without: Option<Box<Entry>>,
 }
 
 /// One entry as written.
@@ -233,7 +235,7 @@ fn blank(ship: &Ship, unix_s: i64, zone_h: i64, lat: f64, lon: f64, speed: f64, 
         deviation: None,
         observer: rng.pick(&["C/O", "2/O", "3/O", "Cadet"]),
         remarks: "",
-        truth: Truth { slip: None, place: Where::Record, shift_deg: 0.0 },
+        truth: Truth { slip: None, place: Where::Record, shift_deg: 0.0, without: None },
     }
 }
 

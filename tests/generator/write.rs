@@ -42,16 +42,24 @@ fn number(value: Option<f64>, decimals: usize) -> String {
     value.map_or(String::new(), |v| format!("{:.decimals$}", v + 0.0))
 }
 
-/// The log as CSV.
-pub fn csv(log: &Log, columns: Columns) -> String {
+/// Whether the slip of `entry` shows in any column that is kept.
+pub fn shows(entry: &Entry, columns: Columns) -> bool {
+    entry.truth.without.as_ref().is_some_and(|without| names(columns).iter().any(|name| cell(entry, name) != cell(without, name)))
+}
+
+fn names(columns: Columns) -> Vec<&str> {
     let time = if columns.ship_time { &["ship_time", "zone"][..] } else { &["utc"][..] };
     let rest = [
         "lat", "lon", "body", "method", "horizon", "eye_height_m", "mark", "charted_bearing", "repeater", "gyro_bearing", "compass_bearing",
         "gyro_heading", "compass_heading", "speed_kn", "logged_azimuth", "logged_gyro_error", "logged_compass_error", "logged_variation",
         "logged_deviation", "observer", "remarks",
     ];
-    let kept: Vec<&str> =
-        ["vessel"].iter().chain(time).chain(rest.iter()).copied().filter(|name| !columns.without.contains(name)).collect();
+    ["vessel"].iter().chain(time).chain(rest.iter()).copied().filter(|name| !columns.without.contains(name)).collect()
+}
+
+/// The log as CSV.
+pub fn csv(log: &Log, columns: Columns) -> String {
+    let kept = names(columns);
     let mut writer = csv::Writer::from_writer(Vec::new());
     writer.write_record(&kept).unwrap();
     for e in &log.entries {

@@ -2,7 +2,7 @@
 
 use super::measure::{Known, Table};
 use super::read::{read, review};
-use crate::generator::{Columns, Kind, Log, Rng, Ship, Style, Where, csv};
+use crate::generator::{Columns, Kind, Log, Rng, Ship, Style, Where, csv, shows};
 use shadowpin::limits::Limits;
 
 /// One log: vessels of these kinds, written that way.
@@ -41,7 +41,7 @@ fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) 
     for (entry, verdict) in log.entries.iter().zip(&verdicts) {
         let kind = ships.iter().find(|s| s.name == entry.vessel).unwrap().kind;
         let known = Known {
-            slip: entry.truth.slip.map(str::to_owned),
+            slip: entry.truth.slip.filter(|_| shows(entry, house.columns)).map(str::to_owned),
             place: place(entry.truth.place).to_owned(),
             shift_deg: entry.truth.shift_deg,
             pattern: kind != Kind::Good,

@@ -78,8 +78,10 @@ fn cannot(id: PatternId, facts: &[&Fact], run: Option<&Run>, book: &Logbook) -> 
         }
         PatternId::AzimuthCircleTilt => (spread(facts.iter().map(|f| f.tan_altitude()).collect()) < LEAST_TAN_SPREAD)
             .then(|| "all bodies stood about equally high".to_owned()),
-        PatternId::VisibleHorizon => (facts.iter().filter(|f| f.on_horizon() != 0.0).count() < LEAST_ON_HORIZON)
-            .then(|| "too few risings and settings above latitude 15".to_owned()),
+        PatternId::VisibleHorizon => {
+            let on: Vec<f64> = facts.iter().map(|f| f.on_horizon()).filter(|x| *x != 0.0).collect();
+            (on.len() < LEAST_ON_HORIZON || spread(on) < LEAST_TAN_SPREAD).then(|| "too few risings and settings in higher latitudes".to_owned())
+        }
         _ => None,
     }
 }

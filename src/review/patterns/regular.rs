@@ -63,7 +63,7 @@ pub fn judge(vessel: &Vessel, book: &Logbook, limits: &Limits) -> Answer {
         let residuals: Vec<f64> = vessel
             .facts
             .iter()
-            .filter(|f| usize::from(f.compass) == at && !f.has(super::super::fact::flag::LACKS_GYRO))
+            .filter(|f| usize::from(f.compass()) == at && !f.has(super::super::fact::flag::LACKS_GYRO))
             .filter_map(|f| Some(f.deviation_deg()? - curve.at(f.compass_heading_deg()?, f.field()?).0))
             .filter(|r| r.abs() < OUTLIER * curve.scatter_deg)
             .collect();
