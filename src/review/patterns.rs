@@ -79,6 +79,11 @@ const LEAST_CARD_ROWS: usize = 8;
 /// Standard uncertainties that a constant must be sure by.
 const SURE: f64 = 4.0;
 
+/// What local variation along a track may add to A, degrees: the model's own u at sea.
+const LOCAL_VARIATION_U_DEG: f64 = 0.3;
+/// What must be left of A beyond its uncertainty, degrees.
+const LEAST_SURE_DEG: f64 = 0.5;
+
 /// Deviations off the card, or off nothing, by a constant on every heading.
 fn constant_a(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
     let id = PatternId::ConstantA;
@@ -93,7 +98,10 @@ fn constant_a(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
             (middle.abs() > limits.thresholds.constant_a_card_deg && middle.abs() > SURE * 1.2533 * scale / n.sqrt()).then_some(middle)
         } else {
             match vessel.curve(at as u8).and_then(|c| c.coefficients().first().copied().flatten()) {
-                Some((a, u)) => (a.abs() - 2.0 * u > limits.thresholds.constant_a_deg).then_some(a),
+                Some((a, u)) => {
+                    let sure = a.abs() > 3.0 * u.hypot(LOCAL_VARIATION_U_DEG) + LEAST_SURE_DEG;
+                    (sure && a.abs() > limits.thresholds.constant_a_deg).then_some(a)
+                }
                 None => {
                     why = Some(match vessel.curve(at as u8) {
                         None => "too few bearings or headings by magnetic compass".to_owned(),

@@ -89,7 +89,7 @@ const LEAST_ROWS: usize = 4;
 /// Fewest rows to look for what a gyro follows.
 const LEAST_ROWS_TERMS: usize = 12;
 /// Rows on each side of a step.
-const STEP_SIDE: usize = 5;
+const STEP_SIDE: usize = 8;
 /// Terms beside level and repeaters.
 const MOST_TERMS: usize = 5;
 /// A run is not one where its rows scatter more, degrees.

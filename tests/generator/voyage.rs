@@ -123,12 +123,13 @@ pub fn stars() -> Vec<Body> {
 /// What is taken at that moment, if the sky allows.
 fn choose(unix_s: i64, lat: f64, lon: f64, rng: &mut Rng) -> Option<(Body, &'static str, i64)> {
     let (_, sun) = seen(Body::Sun, unix_s, lat, lon)?;
-    if sun.abs() < 12.0 && rng.chance(0.75) {
-        let rising = rng.chance(0.5);
-        if let Some((_, at)) = on_horizon(Body::Sun, rising, HorizonLine::Celestial, unix_s, lat, lon)
-            && (at - unix_s).abs() < 5400
-        {
-            return Some((Body::Sun, if rising { "rising" } else { "setting" }, at));
+    if sun.abs() < 15.0 && rng.chance(0.85) {
+        for rising in [true, false] {
+            if let Some((_, at)) = on_horizon(Body::Sun, rising, HorizonLine::Celestial, unix_s, lat, lon)
+                && (at - unix_s).abs() < 5400
+            {
+                return Some((Body::Sun, if rising { "rising" } else { "setting" }, at));
+            }
         }
     }
     if sun > 3.0 {
@@ -313,7 +314,7 @@ fn observe(ship: &Ship, entry: &mut Entry, (wander, local, after_step): (f64, f6
     if ship.kind == Kind::RepeaterDiffers {
         entry.repeater = if starboard { "starboard" } else { "port" };
     }
-    let tilt = rng.normal(0.15) * altitude.max(0.0).to_radians().tan();
+    let tilt = rng.normal(if ship.kind == Kind::Invented { 0.0 } else { 0.15 }) * altitude.max(0.0).to_radians().tan();
     // Bearings nobody read: worked backwards from the errors they should give, to the half degree below.
     let (gyro_noise, compass_noise) = if ship.kind == Kind::Invented { (0.02, 0.05) } else { (style.gyro_noise_deg, style.compass_noise_deg) };
     let gyro_wander = if ship.kind == Kind::Invented { wander } else { 0.0 };

@@ -67,6 +67,13 @@ fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) 
             }
         }
     }
+    if std::env::var("DETAIL").is_ok() {
+        let summary = shadowpin::review::Summary::of(&fleet, &shadowpin::review::Tally::default());
+        for v in &summary.vessels {
+            let kind = ships.iter().find(|s| s.name == v.vessel).unwrap().kind;
+            println!("DETAIL {} {seed} {kind:?} {} {:?} {:?} {:?}", house.name, v.observations, v.patterns, v.gyros, v.not_evaluated);
+        }
+    }
     let named = ships.iter().map(|s| (s.kind, fleet.patterns(&s.name).map(|p| p.id()).collect())).collect();
     (table, named)
 }
@@ -76,7 +83,8 @@ fn hold(house: &House, seeds: std::ops::Range<u64>, first: f64, three: f64) {
     let mut table = Table::default();
     let mut wrong = Vec::new();
     let mut missed = Vec::new();
-    for seed in seeds {
+    let more = std::env::var("MORE").ok().and_then(|m| m.parse::<u64>().ok()).unwrap_or(0);
+    for seed in seeds.start..seeds.end + more {
         let (one, named) = measure(house, seed);
         table.merge(one);
         for (kind, found) in named {
