@@ -39,6 +39,26 @@ impl BadValue {
     }
 }
 
+/// Edits between two words, an exchange of neighbours counted once (optimal string alignment).
+pub(crate) fn edits(a: &str, b: &str) -> usize {
+    let (a, b): (Vec<char>, Vec<char>) = (a.chars().collect(), b.chars().collect());
+    // Three rows of the table: two before, one before, now.
+    let (mut older, mut old): (Vec<usize>, Vec<usize>) = (Vec::new(), (0..=b.len()).collect());
+    for (i, ca) in a.iter().enumerate() {
+        let mut now = vec![i + 1];
+        for (j, cb) in b.iter().enumerate() {
+            let at = |row: &[usize], j: usize| row.get(j).copied().unwrap_or(usize::MAX / 2);
+            let mut best = (at(&old, j + 1) + 1).min(at(&now, j) + 1).min(at(&old, j) + usize::from(ca != cb));
+            if i > 0 && j > 0 && a.get(i - 1) == Some(cb) && b.get(j - 1) == Some(ca) {
+                best = best.min(at(&older, j - 1) + 1);
+            }
+            now.push(best);
+        }
+        (older, old) = (old, now);
+    }
+    old.last().copied().unwrap_or(usize::MAX)
+}
+
 fn hint_tail(hint: &str) -> String {
     if hint.is_empty() { String::new() } else { format!("; {hint}") }
 }
@@ -79,6 +99,16 @@ pub enum NoAnswer {
         /// First decimal year covered.
         from: f64,
         /// Last decimal year answered.
+        to: f64,
+    },
+    /// The field is not answered at that height.
+    #[error("no field for a height of {height_km} km: {from} to {to} km above the ellipsoid are answered")]
+    Height {
+        /// Height asked for, kilometres above the ellipsoid.
+        height_km: f64,
+        /// Lowest answered.
+        from: f64,
+        /// Highest answered.
         to: f64,
     },
     /// The horizontal field is too weak for a compass to point.

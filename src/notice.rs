@@ -84,6 +84,85 @@ pub enum Notice {
         /// Topocentric altitude, degrees.
         altitude_deg: f64,
     },
+    /// Readings of a swing that cannot belong to its curve were left out (`readings-set-aside`).
+    ReadingsSetAside {
+        /// How many.
+        count: usize,
+    },
+    /// The readings of a swing scatter more than readings do (`large-scatter`).
+    LargeScatter {
+        /// Their standard deviation about the curve, degrees.
+        scatter_deg: f64,
+    },
+    /// A swing has hardly more readings than a curve has coefficients (`hardly-checked`).
+    HardlyChecked {
+        /// Readings used.
+        readings: usize,
+    },
+    /// Coefficients that the headings cannot tell (`undetermined`).
+    Undetermined {
+        /// Which of A to E are determined.
+        determined: [bool; 5],
+    },
+    /// A sector without an observation (`unproven-headings`).
+    UnprovenHeadings {
+        /// Last observed heading before it, degrees.
+        from_deg: f64,
+        /// First observed heading after it, clockwise, degrees.
+        to_deg: f64,
+    },
+    /// A deviation so large that the approximate form of the curve no longer holds (`large-deviation`).
+    LargeDeviation {
+        /// The largest, degrees.
+        deviation_deg: f64,
+        /// Whether the exact form was taken: it fits better.
+        exact: bool,
+    },
+    /// Turning clockwise and anticlockwise gives different deviations (`turns-differ`).
+    TurnsDiffer {
+        /// Clockwise - anticlockwise, degrees.
+        difference_deg: f64,
+        /// Its standard uncertainty, degrees.
+        u_deg: f64,
+    },
+    /// The readings cannot tell what of B and C is permanent and what is induced (`latitude-untold`).
+    LatitudeUntold,
+    /// Readings of one curve were taken at different magnetic latitudes (`latitudes-mixed`).
+    LatitudesMixed,
+    /// The figures of a deviation card do not lie on a curve (`card-not-smooth`).
+    CardNotSmooth {
+        /// Largest residual, degrees.
+        residual_deg: f64,
+        /// The heading of it, degrees.
+        heading_deg: f64,
+    },
+    /// A deviation card with a large constant part (`card-constant`).
+    CardConstant {
+        /// Coefficient A, degrees, east +.
+        a_deg: f64,
+    },
+    /// A deviation card that is near nil on every heading (`card-near-nil`).
+    CardNearNil {
+        /// Largest deviation on it, degrees.
+        largest_deg: f64,
+    },
+    /// Observed deviations are the opposite of the card's (`card-reversed`).
+    CardReversed {
+        /// Observations that say so.
+        observations: usize,
+    },
+    /// A deviation card with too few headings for a curve: it is read linearly between them (`card-sparse`).
+    CardSparse {
+        /// Headings on it.
+        headings: usize,
+    },
+    /// A deviation card older than it should be (`card-old`).
+    CardOld {
+        /// Its age, months.
+        age_months: u32,
+        /// The age allowed, months.
+        limit_months: u32,
+    },
 }
 
 impl Notice {
@@ -105,6 +184,21 @@ impl Notice {
             Self::VenusByDay { .. } => "venus-by-day",
             Self::GyroDoubtful { .. } => "gyro-doubtful",
             Self::BelowHorizon { .. } => "below-horizon",
+            Self::ReadingsSetAside { .. } => "readings-set-aside",
+            Self::LargeScatter { .. } => "large-scatter",
+            Self::HardlyChecked { .. } => "hardly-checked",
+            Self::Undetermined { .. } => "undetermined",
+            Self::UnprovenHeadings { .. } => "unproven-headings",
+            Self::LargeDeviation { .. } => "large-deviation",
+            Self::TurnsDiffer { .. } => "turns-differ",
+            Self::LatitudeUntold => "latitude-untold",
+            Self::LatitudesMixed => "latitudes-mixed",
+            Self::CardNotSmooth { .. } => "card-not-smooth",
+            Self::CardConstant { .. } => "card-constant",
+            Self::CardNearNil { .. } => "card-near-nil",
+            Self::CardReversed { .. } => "card-reversed",
+            Self::CardSparse { .. } => "card-sparse",
+            Self::CardOld { .. } => "card-old",
         }
     }
 }
@@ -145,6 +239,73 @@ impl fmt::Display for Notice {
             Self::VenusByDay { sun_altitude_deg } => write!(f, "Venus by day, the sun {sun_altitude_deg:.0} degrees high"),
             Self::GyroDoubtful { latitude_deg } => write!(f, "latitude {latitude_deg:.0}: gyro doubtful"),
             Self::BelowHorizon { altitude_deg } => write!(f, "the body is below the horizon (altitude {altitude_deg:.1})"),
+            Self::ReadingsSetAside { count: 1 } => write!(f, "one reading cannot belong to the curve and was left out"),
+            Self::ReadingsSetAside { count } => write!(f, "{count} readings cannot belong to the curve and were left out"),
+            Self::LargeScatter { scatter_deg } => write!(
+                f,
+                "the readings scatter by {scatter_deg:.1} degrees about the curve: some are wrong, and these data cannot tell which"
+            ),
+            Self::HardlyChecked { readings } => {
+                write!(f, "{readings} readings are hardly more than the coefficients: a wrong one would not be seen")
+            }
+            Self::Undetermined { determined } => {
+                let names: Vec<&str> = ["A", "B", "C", "D", "E"].into_iter().zip(determined).filter(|(_, d)| !d).map(|(n, _)| n).collect();
+                write!(f, "these headings cannot tell {}", listed(&names))
+            }
+            Self::UnprovenHeadings { from_deg, to_deg } => {
+                write!(f, "nothing was observed between headings {} and {}", three_figures(from_deg), three_figures(to_deg))
+            }
+            Self::LargeDeviation { deviation_deg, exact } => write!(
+                f,
+                "deviation reaches {deviation_deg:.1} degrees, where the five-coefficient curve is only approximate: {}",
+                if exact { "the exact form is used" } else { "the exact form fits no better here" }
+            ),
+            Self::TurnsDiffer { difference_deg, u_deg } => write!(
+                f,
+                "turning clockwise gives deviations {:.1} {} of turning anticlockwise (u {u_deg:.1}): the curve lies midway",
+                difference_deg.abs(),
+                if difference_deg < 0.0 { "west" } else { "east" }
+            ),
+            Self::LatitudeUntold => {
+                write!(f, "the readings cannot tell permanent from induced magnetism: they need places of different magnetic latitude")
+            }
+            Self::LatitudesMixed => {
+                write!(f, "the readings come from different magnetic latitudes, where B and C differ: the curve is a mean of them")
+            }
+            Self::CardNotSmooth { residual_deg, heading_deg } => {
+                write!(f, "the card is not smooth: {:.1} off its own curve at {}", residual_deg.abs(), three_figures(heading_deg))
+            }
+            Self::CardConstant { a_deg } => write!(
+                f,
+                "the card has a constant part of {:.1} {}: a lubber line out of true, or a wrong variation when it was made",
+                a_deg.abs(),
+                if a_deg < 0.0 { "W" } else { "E" }
+            ),
+            Self::CardNearNil { largest_deg } => {
+                write!(f, "the card is near nil on every heading (largest {largest_deg:.1}): few ships' compasses are")
+            }
+            Self::CardReversed { observations } => {
+                write!(f, "{observations} observations give the card's deviations with the opposite sign: were east and west exchanged?")
+            }
+            Self::CardSparse { headings } => write!(
+                f,
+                "the card's {headings} headings are too few, or too close together, for a curve: it is read in a straight line between them"
+            ),
+            Self::CardOld { age_months, limit_months } => write!(f, "the card is {age_months} months old, {limit_months} are allowed"),
         }
+    }
+}
+
+/// A heading in three whole figures.
+fn three_figures(deg: f64) -> String {
+    format!("{:03}", (deg.round() as i64).rem_euclid(360))
+}
+
+/// "A", "A and E", "A, D and E".
+fn listed(names: &[&str]) -> String {
+    match names {
+        [] => String::new(),
+        [one] => (*one).to_owned(),
+        [first @ .., last] => format!("{} and {last}", first.join(", ")),
     }
 }

@@ -1,5 +1,6 @@
 //! `shadowpin amplitude`: a bearing at rising or setting.
 
+use super::card::CardArgs;
 use super::exit::Exit;
 use super::instruments::Instruments;
 use super::one_row;
@@ -65,6 +66,8 @@ pub struct Args {
     gyro_error: Option<String>,
     #[command(flatten)]
     instruments: Instruments,
+    #[command(flatten)]
+    card: CardArgs,
     /// List every term of each uncertainty
     #[arg(long)]
     budget: bool,
@@ -96,9 +99,11 @@ pub fn run(args: Args) -> Result<Exit> {
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
     }
+    let on_card = args.card.on(&observation, moment.utc)?;
+    let remarks = on_card.iter().flat_map(|card| card.sentences(&worked)).collect();
     let answer = match args.output.format {
-        Format::Json => one_row::json(&observation, &worked),
-        Format::Csv => one_row::csv(&observation, &worked),
+        Format::Json => one_row::json(&observation, &worked, on_card.as_ref()),
+        Format::Csv => one_row::csv(&observation, &worked, on_card.as_ref()),
         Format::Text => {
             let eye_height_m = observation.eye_height_m.unwrap_or(limits.uncertainty.eye_height_assumed_m);
             let crossing = match worked.on_horizon.map(|h| h.search) {
@@ -125,6 +130,7 @@ pub fn run(args: Args) -> Result<Exit> {
                 limb_diameters: crossing.map(|c| limb_diameters(body, c.utc, place.position, eye_height_m)),
                 ladder: rungs,
                 gyro_error: stated.or(worked.gyro_error.map(|e| e.value)),
+                remarks,
                 with_budget: args.budget,
             }
             .text()

@@ -1,5 +1,6 @@
 //! `shadowpin azimuth`: one bearing.
 
+use super::card::CardArgs;
 use super::exit::Exit;
 use super::instruments::Instruments;
 use super::one_row;
@@ -26,6 +27,8 @@ pub struct Args {
     body: String,
     #[command(flatten)]
     instruments: Instruments,
+    #[command(flatten)]
+    card: CardArgs,
     /// List every term of each uncertainty
     #[arg(long)]
     budget: bool,
@@ -45,6 +48,8 @@ pub fn run(args: Args) -> Result<Exit> {
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
     }
+    let on_card = args.card.on(&observation, moment.utc)?;
+    let remarks = on_card.iter().flat_map(|card| card.sentences(&worked)).collect();
     let answer = match args.output.format {
         Format::Text => AzimuthPage {
             body,
@@ -54,12 +59,12 @@ pub fn run(args: Args) -> Result<Exit> {
             observation: &observation,
             worked: &worked,
             hand: by_hand(body, moment.utc, place.position),
-            remarks: Vec::new(),
+            remarks,
             with_budget: args.budget,
         }
         .text(),
-        Format::Json => one_row::json(&observation, &worked),
-        Format::Csv => one_row::csv(&observation, &worked),
+        Format::Json => one_row::json(&observation, &worked, on_card.as_ref()),
+        Format::Csv => one_row::csv(&observation, &worked, on_card.as_ref()),
     };
     args.output.write(&answer)?;
     Ok(Exit::Clean)

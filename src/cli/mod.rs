@@ -2,10 +2,18 @@
 
 mod amplitude;
 mod azimuth;
+mod card;
 mod exit;
+mod files;
 mod instruments;
+mod limits;
 mod one_row;
 mod output;
+mod plan;
+mod read;
+mod self_check;
+mod swing;
+mod variation;
 mod when_where;
 
 use clap::{Parser, Subcommand};
@@ -27,6 +35,13 @@ struct Cli {
 enum Command {
     Azimuth(azimuth::Args),
     Amplitude(amplitude::Args),
+    Plan(plan::Args),
+    Limits(limits::Args),
+    SelfCheck(self_check::Args),
+    /// A deviation curve from the deviations of a swing
+    Swing(swing::Args),
+    /// Variation and the earth's field at a place and date
+    Variation(variation::Args),
 }
 
 /// Runs the command line and answers the exit code: 0 nothing to report, 1 queries, 2 could not run, 3 problem rows.
@@ -52,5 +67,10 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
     match command {
         Command::Azimuth(args) => azimuth::run(args),
         Command::Amplitude(args) => amplitude::run(args),
+        Command::Plan(args) => plan::run(args),
+        Command::Limits(args) => limits::run(args),
+        Command::SelfCheck(args) => self_check::run(args),
+        Command::Swing(args) => swing::run(args),
+        Command::Variation(args) => variation::run(args),
     }
 }

@@ -2,6 +2,7 @@
 
 use shadowpin::compass::{HorizonKind, Observation, Target, Worked};
 use shadowpin::horizon::{Limb, RisingOrSetting};
+use shadowpin::report::card::OnCard;
 use shadowpin::report::rows::{RowFigures, push_csv_text, push_json_text};
 use shadowpin::time::text::write::iso;
 
@@ -39,14 +40,16 @@ fn given(observation: &Observation) -> Vec<(&'static str, String)> {
 }
 
 /// The ids of the notices, `;` between.
-fn notice_ids(worked: &Worked) -> String {
-    worked.notices.iter().map(|n| n.id()).collect::<Vec<_>>().join(";")
+fn notice_ids(worked: &Worked, on_card: Option<&OnCard>) -> String {
+    let of_card = on_card.into_iter().flat_map(|card| &card.notices);
+    worked.notices.iter().chain(of_card).map(|n| n.id()).collect::<Vec<_>>().join(";")
 }
 
 /// A header and one row.
-pub fn csv(observation: &Observation, worked: &Worked) -> String {
-    let notices = notice_ids(worked);
-    let figures = RowFigures { worked: Some(worked), notices: &notices, ..RowFigures::default() };
+pub fn csv(observation: &Observation, worked: &Worked, on_card: Option<&OnCard>) -> String {
+    let notices = notice_ids(worked, on_card);
+    let card_deviation_deg = on_card.map(|card| card.deviation.deg());
+    let figures = RowFigures { worked: Some(worked), card_deviation_deg, notices: &notices, ..RowFigures::default() };
     let (mut header, mut row) = (Vec::new(), Vec::new());
     for (at, (name, text)) in given(observation).iter().enumerate() {
         if at > 0 {
@@ -68,9 +71,10 @@ pub fn csv(observation: &Observation, worked: &Worked) -> String {
 }
 
 /// One object.
-pub fn json(observation: &Observation, worked: &Worked) -> String {
-    let notices = notice_ids(worked);
-    let figures = RowFigures { worked: Some(worked), notices: &notices, ..RowFigures::default() };
+pub fn json(observation: &Observation, worked: &Worked, on_card: Option<&OnCard>) -> String {
+    let notices = notice_ids(worked, on_card);
+    let card_deviation_deg = on_card.map(|card| card.deviation.deg());
+    let figures = RowFigures { worked: Some(worked), card_deviation_deg, notices: &notices, ..RowFigures::default() };
     let mut out = vec![b'{'];
     for (at, (name, text)) in given(observation).iter().enumerate() {
         if at > 0 {

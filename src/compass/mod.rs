@@ -1,6 +1,8 @@
 //! Errors of the gyrocompass and the magnetic compass: one observation worked, variation, deviation, the gyro.
 
 mod budget;
+pub mod card;
+pub mod curve;
 mod direction;
 pub mod field;
 mod observation;

@@ -38,6 +38,8 @@ pub struct AmplitudePage<'a> {
     pub ladder: Vec<Rung>,
     /// The gyro's error, for the bearings to expect.
     pub gyro_error: Option<GyroError>,
+    /// Sentences to add under the figures: the card.
+    pub remarks: Vec<String>,
     /// Whether every term of each uncertainty is listed.
     pub with_budget: bool,
 }
@@ -62,7 +64,7 @@ impl AmplitudePage<'_> {
             None => {}
         }
         errors(&mut page, self.observation, self.worked, self.with_budget);
-        closing(&mut page, self.worked, &[]);
+        closing(&mut page, self.worked, &self.remarks);
         if !self.ladder.is_empty() {
             page.gap();
             self.ladder(&mut page);

@@ -5,7 +5,7 @@
 /// Range: magnitudes under 1e9. Not-a-number and larger magnitudes append nothing: a blank cell is honest, a wrong one is not.
 pub fn push_fixed(out: &mut Vec<u8>, value: f64, decimals: u8) {
     let scale = 10_u64.pow(u32::from(decimals.min(9)));
-    if !(value.abs() < 1e9) {
+    if value.is_nan() || value.abs() >= 1e9 {
         return;
     }
     let scaled = (value.abs() * scale as f64).round() as u64;

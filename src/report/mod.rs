@@ -2,7 +2,13 @@
 
 pub mod amplitude;
 pub mod azimuth;
+pub mod card;
 mod column;
+mod figure;
 pub mod fixed;
+pub mod limits;
+pub mod plan;
 pub mod rows;
+pub mod swing;
+pub mod variation;
 mod words;

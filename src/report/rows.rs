@@ -144,8 +144,12 @@ mod tests {
 
     #[test]
     fn blanks_and_words() {
-        let row =
-            RowFigures { note: "one, two \"three\"", queries: "below-horizon", card_deviation_deg: Some(-0.001), ..RowFigures::default() };
+        let row = RowFigures {
+            note: "one, two \"three\"",
+            queries: "below-horizon",
+            card_deviation_deg: Some(-0.000_01),
+            ..RowFigures::default()
+        };
         let mut csv = Vec::new();
         row.push_csv(&mut csv, b',');
         assert_eq!(String::from_utf8(csv).unwrap(), ",,,,,,,,,,,,,,,,,0.00,,below-horizon,,,\"one, two \"\"three\"\"\",");

@@ -2,10 +2,18 @@
 
 mod body;
 pub mod earth;
+mod frame;
+mod moon;
+mod place;
+mod planets;
+mod segments;
+mod stars;
 pub mod sun;
 
 pub use body::{Body, Planet};
 pub use earth::aries_gha_deg;
+pub use place::apparent_place;
+pub use stars::Star;
 
 /// The direction of a body's centre as seen from the centre of the earth: apparent place, true equator and equinox of date.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -18,9 +26,4 @@ pub struct ApparentPlace {
     pub horizontal_parallax_deg: f64,
     /// Apparent semidiameter, degrees; 0 for a star or a planet.
     pub semidiameter_deg: f64,
-}
-/// stub
-pub fn apparent_place(body: Body, utc: crate::time::UtcInstant) -> ApparentPlace {
-    let _ = body;
-    sun::apparent_place(utc)
 }

@@ -140,6 +140,15 @@ fn a_weak_field_is_said() {
 }
 
 #[test]
+fn heights_outside_are_refused() {
+    for height in [-1.1, 851.0, f64::NAN, f64::INFINITY] {
+        assert!(matches!(field_in_year(at(10.0, 20.0), 2026.0, height), Err(NoAnswer::Height { .. })));
+    }
+    let refused = field_in_year(at(10.0, 20.0), 2026.0, 900.0).unwrap_err();
+    assert_eq!(refused.to_string(), "no field for a height of 900 km: -1 to 850 km above the ellipsoid are answered");
+}
+
+#[test]
 fn never_not_a_number() {
     for year in [1900.0, 1962.5, 2024.999, 2025.0, 2031.0] {
         for lat in [-90.0, -89.999_999_9, -64.0, 0.0, 1e-300, 86.5, 90.0] {

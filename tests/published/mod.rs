@@ -2,6 +2,7 @@
 //!
 //! The files they read stand in `fixtures/published`; `fixtures/README.md` names the source of each.
 
+mod pub226;
 mod wmm2025;
 
 /// A published file as delivered: its path below `fixtures/published`.
@@ -11,6 +12,8 @@ pub fn file(name: &str) -> String {
 }
 
 mod azimuth_table;
+mod jpl_bodies;
 mod jpl_rise_set;
 mod jpl_sun;
+mod worked_errors;
 mod worked_examples;

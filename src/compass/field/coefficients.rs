@@ -7,6 +7,9 @@ use std::sync::OnceLock;
 const WMM2025: &str = include_str!("data/WMM2025.COF");
 const IGRF14: &str = include_str!("data/IGRF14.shc");
 
+/// By degree and order (negative for h): the values of all epochs.
+type IgrfTerms = HashMap<(u16, i32), Vec<f64>>;
+
 /// Years between two sets of IGRF coefficients.
 const IGRF_STEP_YEARS: f64 = 5.0;
 
@@ -50,7 +53,7 @@ fn wmm_terms(text: &str) -> HashMap<(u16, u16), [f64; 4]> {
 }
 
 /// The epochs, and lines of "n m value..." with m negative for h, one value an epoch.
-fn igrf_terms(text: &str) -> (Vec<f64>, HashMap<(u16, i32), Vec<f64>>) {
+fn igrf_terms(text: &str) -> (Vec<f64>, IgrfTerms) {
     let mut lines = text.lines().filter(|l| !l.starts_with('#')).skip(1);
     let numbers = |line: &str| line.split_whitespace().filter_map(|w| w.parse().ok()).collect::<Vec<f64>>();
     let years = lines.next().map(numbers).unwrap_or_default();

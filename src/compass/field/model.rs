@@ -1,6 +1,5 @@
 //! Which model answers for which date.
 
-use super::geocentric::Geocentric;
 use super::series::Series;
 use super::{Field, assemble, coefficients};
 use crate::angle::Position;
@@ -62,12 +61,12 @@ impl Model {
 
     /// The field by this model, whichever model answers for that date elsewhere; for comparing models.
     ///
-    /// Range: the model's [span](Self::span), and a year after its end.
+    /// Range: the model's [span](Self::span), and a year after its end; heights as for [`field`](super::field).
     ///
     /// # Errors
-    /// [`NoAnswer::FieldModel`] outside it.
+    /// [`NoAnswer::FieldModel`] and [`NoAnswer::Height`] outside it.
     pub fn field(self, position: Position, year: f64, height_km: f64) -> Result<Field, NoAnswer> {
-        assemble(self, &Geocentric::of(position, height_km), year)
+        assemble(self, position, year, height_km)
     }
 
     /// The series of the span of time that `year` lies in.

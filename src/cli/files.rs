@@ -1,0 +1,133 @@
+//! Files in, read as often as needed; files out, written whole.
+
+use shadowpin::error::{Error, Result};
+use std::fs::File;
+use std::io::{self, BufWriter, Read, Seek, Write};
+use std::path::{Path, PathBuf};
+
+/// The name under which standard input stands on a command line and in messages.
+pub const STANDARD_INPUT: &str = "-";
+
+/// A log that can be read from its start more than once.
+#[derive(Debug)]
+pub struct Input {
+    file: File,
+    /// What messages call it.
+    pub name: String,
+    path: Option<PathBuf>,
+}
+
+impl Input {
+    /// Opens a file, or copies standard input (`-`) to a private file that has no name and is gone when the program ends.
+    pub fn open(path: &Path) -> Result<Self> {
+        if path.as_os_str() == STANDARD_INPUT {
+            let spool = || -> io::Result<File> {
+                let mut file = tempfile::tempfile()?;
+                io::copy(&mut io::stdin().lock(), &mut file)?;
+                Ok(file)
+            };
+            let file = spool().map_err(|source| Error::Stream { what: "copying standard input", source })?;
+            return Ok(Self { file, name: "standard input".into(), path: None });
+        }
+        let failed = |source| Error::File { path: path.to_owned(), source };
+        let file = File::open(path).map_err(failed)?;
+        if file.metadata().map_err(failed)?.is_dir() {
+            return Err(failed(io::Error::new(io::ErrorKind::IsADirectory, "is a folder, not a log")));
+        }
+        Ok(Self { file, name: path.display().to_string(), path: Some(path.to_owned()) })
+    }
+
+    /// The content from its start.
+    pub fn from_start(&mut self) -> Result<&mut (impl Read + use<>)> {
+        self.file.rewind().map_err(|source| Error::File { path: self.path.clone().unwrap_or_else(|| self.name.clone().into()), source })?;
+        Ok(&mut self.file)
+    }
+
+    /// Refuses an output that is this very file, whatever it is called.
+    pub fn refuse_as_output(&self, output: Option<&Path>) -> Result<()> {
+        match (&self.path, output) {
+            (Some(input), Some(output)) if same_file::is_same_file(input, output).unwrap_or(false) => {
+                Err(Error::Usage(format!("{} is the log itself: give -o another name, a log is never overwritten", output.display())))
+            }
+            _ => Ok(()),
+        }
+    }
+}
+
+/// Where rows go: standard output, or a file that appears whole when the run ends.
+pub enum RowsOut {
+    /// Standard output.
+    Standard(BufWriter<io::Stdout>),
+    /// A new file beside the target, renamed over it at the end.
+    Whole(BufWriter<tempfile::NamedTempFile>, PathBuf),
+    /// A device or pipe, written as it comes.
+    Stream(BufWriter<File>, PathBuf),
+}
+
+impl RowsOut {
+    /// Opens the output.
+    pub fn open(output: Option<&Path>) -> Result<Self> {
+        const BUFFER: usize = 1 << 16;
+        let Some(path) = output else { return Ok(Self::Standard(BufWriter::with_capacity(BUFFER, io::stdout()))) };
+        let failed = |source| Error::File { path: path.to_owned(), source };
+        if path.metadata().is_ok_and(|m| !m.is_file()) {
+            return Ok(Self::Stream(BufWriter::with_capacity(BUFFER, File::create(path).map_err(failed)?), path.to_owned()));
+        }
+        let folder = path.parent().filter(|p| !p.as_os_str().is_empty()).unwrap_or(Path::new("."));
+        let file = tempfile::Builder::new().prefix(".rows-").tempfile_in(folder).map_err(failed)?;
+        Ok(Self::Whole(BufWriter::with_capacity(BUFFER, file), path.to_owned()))
+    }
+
+    /// Writes out what is left and puts the file in its place.
+    pub fn finish(self) -> Result<()> {
+        match self {
+            Self::Standard(mut out) => out.flush().map_err(|source| Error::Stream { what: "writing to standard output", source }),
+            Self::Stream(mut out, path) => out.flush().map_err(|source| Error::File { path, source }),
+            Self::Whole(out, path) => {
+                let failed = |source| Error::File { path: path.clone(), source };
+                let file = out.into_inner().map_err(|e| failed(e.into_error()))?;
+                set_usual_mode(file.as_file()).map_err(failed)?;
+                file.persist(&path).map_err(|e| failed(e.error))?;
+                Ok(())
+            }
+        }
+    }
+
+    /// The error of a write, with the place it was going to.
+    pub fn failed(&self, source: io::Error) -> Error {
+        match self {
+            Self::Standard(_) => Error::Stream { what: "writing to standard output", source },
+            Self::Whole(_, path) | Self::Stream(_, path) => Error::File { path: path.clone(), source },
+        }
+    }
+}
+
+impl Write for RowsOut {
+    fn write(&mut self, bytes: &[u8]) -> io::Result<usize> {
+        match self {
+            Self::Standard(out) => out.write(bytes),
+            Self::Whole(out, _) => out.write(bytes),
+            Self::Stream(out, _) => out.write(bytes),
+        }
+    }
+
+    fn flush(&mut self) -> io::Result<()> {
+        match self {
+            Self::Standard(out) => out.flush(),
+            Self::Whole(out, _) => out.flush(),
+            Self::Stream(out, _) => out.flush(),
+        }
+    }
+}
+
+/// A temporary file is private to its owner; a result is as readable as any other new file.
+#[cfg(unix)]
+fn set_usual_mode(file: &File) -> io::Result<()> {
+    use std::os::unix::fs::PermissionsExt;
+    file.set_permissions(std::fs::Permissions::from_mode(0o644))
+}
+
+#[cfg(not(unix))]
+fn set_usual_mode(_: &File) -> io::Result<()> {
+    Ok(())
+}

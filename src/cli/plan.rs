@@ -1,0 +1,111 @@
+//! `shadowpin plan`: what to observe next.
+
+use super::exit::Exit;
+use super::instruments::read_limits;
+use super::output::{Format, OutputArgs};
+use super::when_where::{WhenWhere, option};
+use clap::Args as ClapArgs;
+use shadowpin::angle::text::{ErrorSign, Letters, read_direction, read_error, read_number};
+use shadowpin::angle::{CompassError, GyroError, TrueBearing};
+use shadowpin::error::{Error, Result};
+use shadowpin::plan::{Ask, LONGEST_H, Track, identify, plan};
+use shadowpin::report::plan::{PlanPage, candidates_json, candidates_text};
+use std::path::PathBuf;
+
+/// How far a body may stand from what was sighted, degrees, where no tolerance is given.
+const TOLERANCE_DEG: f64 = 5.0;
+
+/// What can be observed in the next hours, from when to when, and which is best.
+#[derive(Debug, ClapArgs)]
+#[command(after_help = "Examples:\n  \
+    shadowpin plan --utc 2026-06-14T06:00:00Z --zone -9 --lat 36-05.8S --lon 130-33.6E --course 204 --speed 12 --gyro-error 0.5L\n  \
+    shadowpin plan --utc 2026-06-14T12:00:00Z --lat 36-05.8S --lon 130-33.6E --bearing 118 --altitude 32")]
+pub struct Args {
+    #[command(flatten)]
+    when_where: WhenWhere,
+    /// True course
+    #[arg(long, value_name = "COURSE", requires = "speed")]
+    course: Option<String>,
+    /// Speed in knots
+    #[arg(long, value_name = "KNOTS", requires = "course", allow_hyphen_values = true)]
+    speed: Option<String>,
+    /// Hours to look ahead, to 48
+    #[arg(long, value_name = "HOURS", default_value = "4", allow_hyphen_values = true)]
+    hours: String,
+    /// Height of eye in metres
+    #[arg(long, value_name = "METRES", allow_hyphen_values = true)]
+    eye_height: Option<String>,
+    /// The gyro's error, such as 0.5L, for the bearings to expect
+    #[arg(long, value_name = "ERROR", allow_hyphen_values = true)]
+    gyro_error: Option<String>,
+    /// The magnetic compass's error on this heading, such as 4E, for the bearings to expect
+    #[arg(long, value_name = "ERROR", allow_hyphen_values = true)]
+    compass_error: Option<String>,
+    /// Limits file (TOML); its blind arcs are left out
+    #[arg(long, value_name = "FILE")]
+    limits: Option<PathBuf>,
+    /// Show every star
+    #[arg(long)]
+    all: bool,
+    /// Which body is that? Its true bearing
+    #[arg(long, value_name = "BEARING")]
+    bearing: Option<String>,
+    /// Its altitude, degrees
+    #[arg(long, value_name = "DEGREES", requires = "bearing", allow_hyphen_values = true)]
+    altitude: Option<String>,
+    /// How far a body may stand from that, degrees
+    #[arg(long, value_name = "DEGREES", requires = "bearing", allow_hyphen_values = true)]
+    tolerance: Option<String>,
+    #[command(flatten)]
+    output: OutputArgs,
+}
+
+/// Looks ahead, or answers which body that is.
+pub fn run(args: Args) -> Result<Exit> {
+    if args.output.format == Format::Csv {
+        return Err(Error::Usage("plan answers as text or json".into()));
+    }
+    let (moment, zone) = args.when_where.moment()?;
+    let position = args.when_where.place()?.position;
+    let number =
+        |name: &str, text: &Option<String>, range, what| text.as_deref().map(|t| option(name, read_number(t, range, what))).transpose();
+    if let Some(bearing) = &args.bearing {
+        let bearing = TrueBearing::wrapping_deg(option("--bearing", read_direction(bearing))?.value);
+        let altitude_deg = number("--altitude", &args.altitude, -2.0..=90.0, "an altitude in degrees, -2 to 90")?;
+        let tolerance_deg = number("--tolerance", &args.tolerance, 0.1..=90.0, "degrees, 0.1 to 90")?.unwrap_or(TOLERANCE_DEG);
+        let candidates = identify(position, moment.utc, bearing, altitude_deg, tolerance_deg);
+        let answer = match args.output.format {
+            Format::Json => candidates_json(&candidates),
+            _ => candidates_text(moment.utc, bearing, tolerance_deg, &candidates),
+        };
+        args.output.write(&answer)?;
+        return Ok(Exit::Clean);
+    }
+    let limits = read_limits(args.limits.as_deref())?;
+    let course = args.course.as_deref().map(|c| option("--course", read_direction(c))).transpose()?;
+    let ask = Ask {
+        track: Track {
+            from: moment.utc,
+            position,
+            course: course.map(|c| TrueBearing::wrapping_deg(c.value)),
+            speed_kn: number("--speed", &args.speed, 0.0..=100.0, "a speed in knots, 0 to 100")?.unwrap_or(0.0),
+        },
+        hours: option("--hours", read_number(&args.hours, 0.1..=LONGEST_H, "hours, 0.1 to 48"))?,
+        eye_height_m: number("--eye-height", &args.eye_height, 0.0..=100.0, "a height of eye in metres, 0 to 100")?
+            .unwrap_or(limits.uncertainty.eye_height_assumed_m),
+        limits: &limits,
+    };
+    let gyro_error = args.gyro_error.as_deref().map(|e| option("--gyro-error", read_error(e, ErrorSign::EastPlus, Letters::LowHighToo)));
+    let compass_error =
+        args.compass_error.as_deref().map(|e| option("--compass-error", read_error(e, ErrorSign::EastPlus, Letters::EastWest)));
+    let page = PlanPage {
+        ask: &ask,
+        plan: &plan(&ask),
+        zone,
+        gyro_error: gyro_error.transpose()?.map(|e| GyroError::wrapping_deg(e.value)),
+        compass_error: compass_error.transpose()?.map(|e| CompassError::wrapping_deg(e.value)),
+        all: args.all,
+    };
+    args.output.write(&if args.output.format == Format::Json { page.json() } else { page.text() })?;
+    Ok(Exit::Clean)
+}
