@@ -6,7 +6,7 @@ use super::vessel::Vessel;
 use crate::angle::GyroError;
 use crate::compass::GyroRun;
 use crate::limits::Limits;
-use crate::sky::{Body, Planet};
+use crate::sky::Body;
 use std::collections::HashMap;
 use std::sync::OnceLock;
 
@@ -21,10 +21,7 @@ pub struct Fleet {
 /// The bodies that could have been meant.
 pub(super) fn bodies() -> &'static [Body] {
     static BODIES: OnceLock<Vec<Body>> = OnceLock::new();
-    BODIES.get_or_init(|| {
-        let planets = [Planet::Venus, Planet::Mars, Planet::Jupiter, Planet::Saturn].map(Body::Planet);
-        [Body::Sun, Body::Moon].into_iter().chain(planets).chain(Body::stars()).collect()
-    })
+    BODIES.get_or_init(|| Body::all().collect())
 }
 
 impl Fleet {

@@ -101,7 +101,7 @@ fn order(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
     if fact.has(flag::TOO_FAR) {
         let sound = |f: &&Fact| f.has(flag::PLACE) && f.has(flag::TIME) && !f.has(flag::OUT_OF_ORDER) && !f.has(flag::TOO_FAR);
         let near = before.iter().rev().find(sound).or(after.iter().find(sound));
-        if let Some((miles, most_miles)) = near.and_then(|n| apart(n, fact, limits.thresholds.max_speed_kn)) {
+        if let Some((miles, most_miles)) = near.and_then(|n| apart(n, fact, limits)) {
             verdict.queries.push(Query::TooFarTooSoon { miles, most_miles });
         }
     }

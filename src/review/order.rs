@@ -3,8 +3,6 @@
 use super::fact::{Fact, flag};
 use crate::limits::Limits;
 
-/// Miles that positions may be apart whatever the time: two fixes, a berth shifted.
-const SLACK_MILES: f64 = 10.0;
 /// Rows ahead that are asked whether the track goes on without the row in doubt.
 const AHEAD: usize = 3;
 
@@ -19,7 +17,7 @@ pub fn miles(from: (f64, f64), to: (f64, f64)) -> f64 {
 /// Marks the rows whose removal restores the order of time, and those whose removal lets the track go on.
 pub fn mark(facts: &mut [Fact], limits: &Limits) {
     mark_order(facts);
-    mark_track(facts, limits.thresholds.max_speed_kn);
+    mark_track(facts, limits);
 }
 
 /// All rows outside a longest run that never goes back in time. Where that would be most of them, the log has another order
@@ -92,18 +90,18 @@ fn prefer_sound(facts: &[Fact], timed: &[(usize, i64)], kept: &mut [bool]) {
 }
 
 /// Over the miles that could be run in the time between.
-fn too_far(a: &Fact, b: &Fact, max_speed_kn: f64) -> Option<bool> {
-    let (miles, most) = apart(a, b, max_speed_kn)?;
+fn too_far(a: &Fact, b: &Fact, limits: &Limits) -> Option<bool> {
+    let (miles, most) = apart(a, b, limits)?;
     Some(miles > most)
 }
 
 /// Miles between two rows, and the most that could be run.
-pub fn apart(a: &Fact, b: &Fact, max_speed_kn: f64) -> Option<(f64, f64)> {
+pub fn apart(a: &Fact, b: &Fact, limits: &Limits) -> Option<(f64, f64)> {
     let hours = (b.seconds()? - a.seconds()?).abs() as f64 / 3600.0;
-    Some((miles(a.place()?, b.place()?), hours * max_speed_kn + SLACK_MILES))
+    Some((miles(a.place()?, b.place()?), hours * limits.thresholds.max_speed_kn + limits.thresholds.too_far_margin_nm))
 }
 
-fn mark_track(facts: &mut [Fact], max_speed_kn: f64) {
+fn mark_track(facts: &mut [Fact], limits: &Limits) {
     let track: Vec<usize> = facts
         .iter()
         .enumerate()
@@ -111,7 +109,7 @@ fn mark_track(facts: &mut [Fact], max_speed_kn: f64) {
         .map(|(i, _)| i)
         .collect();
     let far = |facts: &[Fact], a: usize, b: usize| -> bool {
-        facts.get(a).zip(facts.get(b)).and_then(|(a, b)| too_far(a, b, max_speed_kn)).unwrap_or(false)
+        facts.get(a).zip(facts.get(b)).and_then(|(a, b)| too_far(a, b, limits)).unwrap_or(false)
     };
     let mut previous: Option<usize> = None;
     for (at, &row) in track.iter().enumerate() {

@@ -35,7 +35,9 @@ fn too_little(residuals: &[f64], step_deg: f64, reading_deg: f64) -> Option<(f64
 pub fn judge(vessel: &Vessel, book: &Logbook, limits: &Limits) -> Answer {
     let gyro_step = book.gyro_steps.step_deg();
     let compass_step = book.compass_steps.step_deg();
-    let mut why = format!("fewer than {LEAST_ROWS} bearings");
+    // Never fewer than the built-in number, whatever is set.
+    let least_rows = LEAST_ROWS.max(limits.thresholds.too_regular_entries as usize);
+    let mut why = format!("fewer than {least_rows} bearings");
     let mut judged = false;
     for gyro in &vessel.runs {
         let Some(run) = gyro.run.as_ref().filter(|r| r.established()) else { continue };
@@ -46,7 +48,7 @@ pub fn judge(vessel: &Vessel, book: &Logbook, limits: &Limits) -> Answer {
             .filter_map(|f| Some(f.gyro_error_deg()? - run.value_deg(f)))
             .filter(|r| r.abs() < OUTLIER * run.scatter_deg)
             .collect();
-        if residuals.len() < LEAST_ROWS {
+        if residuals.len() < least_rows {
             continue;
         }
         if gyro_step >= 1.0 {
@@ -67,7 +69,7 @@ pub fn judge(vessel: &Vessel, book: &Logbook, limits: &Limits) -> Answer {
             .filter_map(|f| Some(f.deviation_deg()? - curve.at(f.compass_heading_deg()?, f.field()?).0))
             .filter(|r| r.abs() < OUTLIER * curve.scatter_deg)
             .collect();
-        if residuals.len() < LEAST_ROWS || compass_step >= 1.0 {
+        if residuals.len() < least_rows || compass_step >= 1.0 {
             continue;
         }
         judged = true;

@@ -7,8 +7,6 @@ use super::super::vessel::Vessel;
 use super::Answer;
 use crate::limits::Limits;
 
-/// A watch, hours.
-const WATCH_H: f64 = 4.0;
 /// An entry made this long before or after a watch counts for it: it is made up at the relief.
 const RELIEF_H: f64 = 1.0;
 /// A ship is under way where she made this between two entries, knots.
@@ -27,6 +25,7 @@ fn ship_hours(fact: &Fact) -> Option<f64> {
 pub fn judge(vessel: &Vessel, limits: &Limits) -> Answer {
     let mut facts: Vec<&Fact> = vessel.facts.iter().filter(|f| ship_hours(f).is_some()).collect();
     facts.sort_by_key(|f| f.seconds());
+    let watch_h = f64::from(limits.watches.hours());
     let (mut watches, mut missed) = (0.0, 0.0);
     for pair in facts.windows(2) {
         let [a, b] = pair else { continue };
@@ -35,10 +34,10 @@ pub fn judge(vessel: &Vessel, limits: &Limits) -> Answer {
         if !(0.0..MOST_GAP_H).contains(&hours) || miles(pa, pb) < UNDER_WAY_KN * hours {
             continue;
         }
-        watches += hours / WATCH_H;
+        watches += hours / watch_h;
         // Whole watches between, the hour of relief at either end given to the entries.
-        let first = ((from + RELIEF_H) / WATCH_H).ceil();
-        let last = ((to - RELIEF_H) / WATCH_H).floor();
+        let first = ((from + RELIEF_H) / watch_h).ceil();
+        let last = ((to - RELIEF_H) / watch_h).floor();
         missed += (last - first).max(0.0);
     }
     if watches < LEAST_WATCHES {
