@@ -154,7 +154,7 @@ settings! {
         max_speed_kn "max_speed_kn" = 25.0 "knots", 1.0 to 100.0: "Speed over which two positions are too far apart"; "our own".
         too_far_margin_nm "too_far_margin" = 10.0 "miles", 0.0 to 1000.0: "Added to speed times time between positions"; "our own".
         constant_a_card_deg "constant_a_card" = 1.0 "degrees", 0.0 to 45.0: "Constant off the card from which a lubber line is suspected"; "common practice: A over 1 is doubtful".
-        constant_a_deg "constant_a" = 1.2 "degrees", 0.0 to 45.0: "The same for coefficient A where no card is given"; "our own".
+        constant_a_deg "constant_a" = 1.5 "degrees", 0.0 to 45.0: "The same for coefficient A where no card is given"; "our own".
         repeater_differs_deg "repeater_differs" = 0.5 "degrees", 0.0 to 45.0: "Difference between repeaters"; "IMO A.424(XI): repeater against master 0.5".
         card_months "card_months" = 24.0 "months", 1.0 to 600.0: "Age from which a deviation card is out of date"; "ISO 25862: adjustment every 2 years".
         too_regular_entries "too_regular_entries" = 20.0 "entries", 20.0 to 100000.0: "Fewest entries that too regular figures are judged by"; "our own; never under 20".

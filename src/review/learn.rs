@@ -1,0 +1,265 @@
+//! The first pass: every row fed once, little of it kept.
+
+use super::checks::{row_queries, unrounded};
+use super::fact::{Fact, MOST_COMPASSES};
+use super::fleet::Fleet;
+use super::query::Query;
+use super::row::{CardFigure, Logged, Names, Row};
+use super::vessel::Vessel;
+use crate::angle::Reading;
+use crate::compass::{GyroType, Observation, Place, Worked};
+use crate::limits::Limits;
+use crate::time::{Moment, Zone};
+use std::collections::HashMap;
+
+/// Rows of a vessel that are looked at for a copy.
+const RECENT: usize = 64;
+/// Affected rows of a vessel that are kept whole.
+const SAMPLE: usize = 32;
+/// Figures of a vessel's logged variation, and of its deviation against a card, that are kept.
+const FIGURES: usize = 512;
+/// A gyro error over this is an affected row before any run is known, degrees.
+const WILD_DEG: f64 = 6.0;
+
+/// Feeds on rows, in the order of the file.
+#[derive(Debug, Clone)]
+pub struct Learn {
+    limits: Limits,
+    vessels: Vec<Logbook>,
+    by_name: HashMap<String, usize>,
+    queries: Vec<Query>,
+}
+
+/// What is kept of one vessel between the passes.
+#[derive(Debug, Clone, Default)]
+pub struct Logbook {
+    pub name: String,
+    /// Gyro and repeater.
+    pub gyros: Vec<(String, String)>,
+    pub compasses: Vec<String>,
+    pub facts: Vec<Fact>,
+    /// Rows with what they copy.
+    pub repeats: Vec<(u64, u64)>,
+    recent: Vec<(u64, u64)>,
+    pub observations: u64,
+    pub affected: u64,
+    /// Rows whose logged errors are off their parts by no more than the readings' own rounding.
+    pub unrounded: u64,
+    pub sample: Vec<Kept>,
+    /// Of the gyro bearings and of the compass bearings.
+    pub gyro_steps: Steps,
+    pub compass_steps: Steps,
+    pub other_gyro: bool,
+    pub has_speed: bool,
+    /// Logged variation less the model's, and the yearly change there, degrees.
+    pub variations: Vec<(f32, f32)>,
+    /// Compass index, deviation less the card's, degrees, and the day.
+    pub against_card: Vec<(u8, f32, i32)>,
+}
+
+/// How finely readings are written.
+#[derive(Debug, Clone, Copy, Default)]
+pub struct Steps {
+    readings: u64,
+    halves: u64,
+    wholes: u64,
+}
+
+impl Steps {
+    fn add<T>(&mut self, reading: Option<Reading<T>>, deg: impl Fn(&T) -> f64) {
+        let Some(reading) = reading else { return };
+        let deg = deg(&reading.value);
+        let on = |step: f64| ((deg / step).round() * step - deg).abs() < 1e-6;
+        self.readings += 1;
+        self.halves += u64::from(on(0.5));
+        self.wholes += u64::from(on(1.0));
+    }
+
+    /// The step that nearly all readings are written in, degrees.
+    pub fn step_deg(self) -> f64 {
+        let nearly = |n: u64| n * 50 >= self.readings * 49;
+        if nearly(self.wholes) {
+            1.0
+        } else if nearly(self.halves) {
+            0.5
+        } else {
+            0.1
+        }
+    }
+}
+
+/// A row kept whole.
+#[derive(Debug, Clone)]
+pub struct Kept {
+    order: u64,
+    number: u64,
+    moment: Option<Moment>,
+    place: Option<Place>,
+    zone: Option<Zone>,
+    observation: Observation,
+    logged: Logged,
+    card: Option<CardFigure>,
+    worked: Worked,
+    /// Index of gyro and repeater among the vessel's.
+    pub gyro: u8,
+}
+
+impl Kept {
+    /// The row again, without names.
+    pub fn row(&self) -> Row<'_> {
+        Row {
+            number: self.number,
+            names: Names { vessel: "", gyro: "", repeater: "", magnetic_compass: "" },
+            moment: self.moment,
+            place: self.place,
+            zone: self.zone,
+            observation: Some(&self.observation),
+            remarks: "",
+            logged: &self.logged,
+            card: self.card,
+            worked: &self.worked,
+        }
+    }
+}
+
+/// A number that scatters rows evenly and is the same on every machine (the finalizer of SplitMix64).
+fn scattered(mut z: u64) -> u64 {
+    z = (z ^ (z >> 30)).wrapping_mul(0xBF58_476D_1CE4_E5B9);
+    z = (z ^ (z >> 27)).wrapping_mul(0x94D0_49BB_1331_11EB);
+    z ^ (z >> 31)
+}
+
+impl Learn {
+    /// Nothing learned yet.
+    pub fn new(limits: Limits) -> Self {
+        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new() }
+    }
+
+    /// Learns one row.
+    pub fn feed(&mut self, row: &Row) {
+        let at = match self.by_name.get(row.names.vessel) {
+            Some(at) => *at,
+            None => {
+                let at = self.vessels.len();
+                self.vessels.push(Logbook { name: row.names.vessel.to_owned(), ..Logbook::default() });
+                self.by_name.insert(row.names.vessel.to_owned(), at);
+                at
+            }
+        };
+        self.queries.clear();
+        row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
+        let unrounded = unrounded(row, &self.queries);
+        let affected = !unrounded && row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG)
+            || !unrounded && self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. }));
+        if let Some(vessel) = self.vessels.get_mut(at) {
+            vessel.unrounded += u64::from(unrounded);
+            vessel.feed(row, affected);
+        }
+    }
+
+    /// What the rows say together.
+    pub fn finish(self) -> Fleet {
+        let vessels = self.vessels.into_iter().map(|book| Vessel::of(book, &self.limits)).collect();
+        Fleet::new(vessels, self.by_name, self.limits)
+    }
+}
+
+/// Index of a name among `names`, added where it is new; the last one where there are more than can be told apart.
+fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -> T) -> u8 {
+    let at = names.iter().position(same).unwrap_or_else(|| {
+        if names.len() < MOST_COMPASSES {
+            names.push(make());
+        }
+        names.len() - 1
+    });
+    at as u8
+}
+
+impl Logbook {
+    fn feed(&mut self, row: &Row, affected: bool) {
+        let names = row.names;
+        let gyro = index(
+            &mut self.gyros,
+            |(g, r)| g == names.gyro && r == names.repeater,
+            || (names.gyro.to_owned(), names.repeater.to_owned()),
+        );
+        let compass = index(&mut self.compasses, |c| c == names.magnetic_compass, || names.magnetic_compass.to_owned());
+        self.facts.push(Fact::of(row, gyro, compass, affected));
+        self.copy_of_an_earlier(row);
+        let Some(observation) = row.observation else { return };
+        self.observations += 1;
+        self.other_gyro |= observation.gyro_type == GyroType::Other;
+        self.has_speed |= observation.speed_kn.is_some();
+        self.gyro_steps.add(observation.gyro_bearing, |b| b.deg());
+        self.compass_steps.add(observation.compass_bearing, |b| b.deg());
+        if let (Some(written), Some(field)) = (row.logged.variation, row.worked.field)
+            && self.variations.len() < FIGURES
+        {
+            let off = crate::angle::wrap_180_deg(written.deg - field.variation.deg());
+            self.variations.push((off as f32, field.annual.variation_deg as f32));
+        }
+        if let (Some(card), Some(deviation)) = (row.card, row.worked.deviation.or(row.worked.deviation_by_comparison))
+            && self.against_card.len() < FIGURES
+        {
+            let off = crate::angle::wrap_180_deg(deviation.value.deg() - card.deviation_deg);
+            let day = row.moment.map_or(0, |m| m.utc.unix_ms().div_euclid(86_400_000) as i32);
+            self.against_card.push((compass, off as f32, day));
+        }
+        if affected {
+            self.affected += 1;
+            self.keep(row, observation, gyro);
+        }
+    }
+
+    /// Keeps an even sample of the affected rows, the same whatever their order.
+    fn keep(&mut self, row: &Row, observation: &Observation, gyro: u8) {
+        let order = scattered(row.number);
+        if self.sample.len() >= SAMPLE {
+            match self.sample.last() {
+                Some(last) if last.order > order => self.sample.pop(),
+                _ => return,
+            };
+        }
+        let at = self.sample.partition_point(|k| k.order < order);
+        let worked = Worked { notices: Vec::new(), ..row.worked.clone() };
+        let kept = Kept {
+            order,
+            number: row.number,
+            moment: row.moment,
+            place: row.place,
+            zone: row.zone,
+            observation: *observation,
+            logged: *row.logged,
+            card: row.card,
+            worked,
+            gyro,
+        };
+        self.sample.insert(at, kept);
+    }
+
+    fn copy_of_an_earlier(&mut self, row: &Row) {
+        // Without a time, rows of the same readings are nothing odd; and neither is a second "overcast".
+        let (Some(moment), Some(observation)) = (row.moment, row.observation) else { return };
+        let fingerprint = fingerprint(moment, observation);
+        if let Some((_, earlier)) = self.recent.iter().find(|(f, _)| *f == fingerprint) {
+            self.repeats.push((row.number, *earlier));
+        }
+        if self.recent.len() == RECENT {
+            self.recent.remove(0);
+        }
+        self.recent.push((fingerprint, row.number));
+    }
+}
+
+/// Time and readings, scattered.
+fn fingerprint(moment: Moment, o: &Observation) -> u64 {
+    let mut hash = scattered(moment.utc.unix_ms() as u64);
+    let mut add = |v: Option<f64>| hash = scattered(hash ^ v.map_or(u64::MAX, f64::to_bits));
+    add(o.gyro_bearing.map(|b| b.value.deg()));
+    add(o.compass_bearing.map(|b| b.value.deg()));
+    add(o.gyro_heading.map(|b| b.value.deg()));
+    add(o.compass_heading.map(|b| b.value.deg()));
+    add(o.place.map(|p| p.position.lat.deg()));
+    add(o.place.map(|p| p.position.lon.deg()));
+    hash
+}

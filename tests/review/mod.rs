@@ -1,0 +1,6 @@
+//! The review measured on logs with known truth.
+
+mod delivered;
+mod made;
+mod measure;
+mod read;
