@@ -176,7 +176,8 @@ fn positions(context: &Context, list: &mut List) {
     let at = |lat: f64, lon: f64| Position::from_deg(lat, wrap_180_deg(lon)).map(Change::Position);
     list.add(Slip::LatitudeName, &ANYWHERE, at(-lat, lon).as_slice());
     list.add(Slip::LongitudeName, &ANYWHERE, at(lat, -lon).as_slice());
-    let tens: Vec<Change> = [(10.0, 0.0), (-10.0, 0.0), (0.0, 10.0), (0.0, -10.0)].iter().filter_map(|(a, b)| at(lat + a, lon + b)).collect();
+    let tens: Vec<Change> =
+        [(10.0, 0.0), (-10.0, 0.0), (0.0, 10.0), (0.0, -10.0)].iter().filter_map(|(a, b)| at(lat + a, lon + b)).collect();
     for &change in &tens {
         list.found.push(Candidate { slip: Slip::TenDegrees, place: Place::Record, forms: 8, change });
     }
@@ -291,7 +292,12 @@ fn bearings(list: &mut List) {
     one(sight.gyro, sight.gyro_heading, Change::Gyro);
     one(sight.compass, sight.compass_heading, Change::Compass);
     if let (Some(gyro), Some(compass)) = (sight.gyro, sight.compass) {
-        list.found.extend(RECORD.map(|place| Candidate { slip: Slip::ColumnsSwapped, place, forms: 4, change: Change::Bearings(compass, gyro) }));
+        list.found.extend(RECORD.map(|place| Candidate {
+            slip: Slip::ColumnsSwapped,
+            place,
+            forms: 4,
+            change: Change::Bearings(compass, gyro),
+        }));
         let both = Change::Bearings(wrap_360_deg(gyro + 180.0), wrap_360_deg(compass + 180.0));
         list.found.extend(RECORD.map(|place| Candidate { slip: Slip::Reciprocal, place, forms: 3, change: both }));
     }

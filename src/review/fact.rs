@@ -121,10 +121,7 @@ impl Fact {
             lon,
             gyro_error: centi(gyro_error),
             deviation: centi(deviation),
-            compass_heading: row
-                .observation
-                .and_then(|o| o.compass_heading)
-                .map_or(NO_HEADING, |h| (h.value.deg() * CENTI).round() as u16),
+            compass_heading: row.observation.and_then(|o| o.compass_heading).map_or(NO_HEADING, |h| (h.value.deg() * CENTI).round() as u16),
             speed_error: centi(speed_error),
             on_horizon: centi(Some(on_horizon)),
             altitude: altitude.round() as i8,

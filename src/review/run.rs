@@ -214,8 +214,12 @@ fn strongest(have: &[Term], refused: &[Term], facts: &[&Fact], residuals: &[f64]
         if have.contains(&term) || refused.contains(&term) || (term == Term::Side && !sides) {
             continue;
         }
-        let (x, y): (Vec<f64>, Vec<f64>) =
-            facts.iter().map(|f| term.value(f)).zip(residuals.iter().copied()).filter(|(x, _)| term != Term::OnHorizon || *x != 0.0).unzip();
+        let (x, y): (Vec<f64>, Vec<f64>) = facts
+            .iter()
+            .map(|f| term.value(f))
+            .zip(residuals.iter().copied())
+            .filter(|(x, _)| term != Term::OnHorizon || *x != 0.0)
+            .unzip();
         if let Some((slope, u, spread)) = slope_by_classes(&x, &y, noise) {
             let (least, least_effect) = term.least();
             if slope.abs() > least && slope.abs() * spread > least_effect {
