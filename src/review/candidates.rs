@@ -176,7 +176,8 @@ fn positions(context: &Context, list: &mut List) {
     let at = |lat: f64, lon: f64| Position::from_deg(lat, wrap_180_deg(lon)).map(Change::Position);
     list.add(Slip::LatitudeName, &ANYWHERE, at(-lat, lon).as_slice());
     list.add(Slip::LongitudeName, &ANYWHERE, at(lat, -lon).as_slice());
-    let tens: Vec<Change> = [(10.0, 0.0), (-10.0, 0.0), (0.0, 10.0), (0.0, -10.0)].iter().filter_map(|(a, b)| at(lat + a, lon + b)).collect();
+    let tens: Vec<Change> =
+        [(10.0, 0.0), (-10.0, 0.0), (0.0, 10.0), (0.0, -10.0)].iter().filter_map(|(a, b)| at(lat + a, lon + b)).collect();
     for &change in &tens {
         list.found.push(Candidate { slip: Slip::TenDegrees, place: Place::Record, forms: 8, change });
     }
@@ -265,8 +266,15 @@ fn digits_swapped(deg: f64) -> Vec<f64> {
 
 /// 247 for 253: as far from the printed ten, on its other side.
 fn read_backwards(deg: f64) -> Vec<f64> {
-    let ten = (deg / 10.0).round() * 10.0;
-    if deg == ten { Vec::new() } else { vec![wrap_360_deg(2.0 * ten - deg)] }
+    let past = deg.rem_euclid(10.0);
+    let (below, above) = (deg - past, deg - past + 10.0);
+    let about = |ten: f64| wrap_360_deg(2.0 * ten - deg);
+    match past {
+        0.0 => Vec::new(),
+        5.0 => vec![about(below), about(above)],
+        p if p < 5.0 => vec![about(below)],
+        _ => vec![about(above)],
+    }
 }
 
 fn bearings(list: &mut List) {
@@ -291,7 +299,12 @@ fn bearings(list: &mut List) {
     one(sight.gyro, sight.gyro_heading, Change::Gyro);
     one(sight.compass, sight.compass_heading, Change::Compass);
     if let (Some(gyro), Some(compass)) = (sight.gyro, sight.compass) {
-        list.found.extend(RECORD.map(|place| Candidate { slip: Slip::ColumnsSwapped, place, forms: 4, change: Change::Bearings(compass, gyro) }));
+        list.found.extend(RECORD.map(|place| Candidate {
+            slip: Slip::ColumnsSwapped,
+            place,
+            forms: 4,
+            change: Change::Bearings(compass, gyro),
+        }));
         let both = Change::Bearings(wrap_360_deg(gyro + 180.0), wrap_360_deg(compass + 180.0));
         list.found.extend(RECORD.map(|place| Candidate { slip: Slip::Reciprocal, place, forms: 3, change: both }));
     }

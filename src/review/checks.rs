@@ -127,8 +127,7 @@ pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
     let by_gyro = || observation.gyro_bearing.zip(logged.gyro_error).map(|(b, e)| b.value.deg() + e.deg);
     let less = |figure: Option<Written>, parts: Option<f64>| Some((wrap_180_deg(figure?.deg - parts?), figure?.step_deg));
     let gyro = less(logged.gyro_error, azimuth.zip(observation.gyro_bearing).map(|(a, b)| a - b.value.deg()));
-    let by_bearing =
-        less(logged.compass_error, azimuth.or_else(by_gyro).zip(observation.compass_bearing).map(|(a, b)| a - b.value.deg()));
+    let by_bearing = less(logged.compass_error, azimuth.or_else(by_gyro).zip(observation.compass_bearing).map(|(a, b)| a - b.value.deg()));
     let by_headings = less(
         logged.compass_error,
         logged

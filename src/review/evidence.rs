@@ -272,9 +272,7 @@ fn track(case: &Case, context: &Context, left: &mut Left) {
         left.other(miles(there, here) / miles_u);
         left.other(context.out_of_reach(utc, here).unwrap_or(0.0).max(0.0));
     }
-    let hours_past = |f: Option<&Fact>, way: f64| {
-        f.and_then(Fact::unix_ms).map_or(0.0, |t| way * (utc.unix_ms() - t) as f64 / 3_600_000.0)
-    };
+    let hours_past = |f: Option<&Fact>, way: f64| f.and_then(Fact::unix_ms).map_or(0.0, |t| way * (utc.unix_ms() - t) as f64 / 3_600_000.0);
     let out = hours_past(context.before, -1.0).max(hours_past(context.after, 1.0));
     // The times kept of the neighbours are to 2 s.
     left.other(if out > 0.01 { 3.0 + out / 2.0 } else { 0.0 });

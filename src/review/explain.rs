@@ -35,10 +35,11 @@ impl Tried {
     }
 }
 
-/// A good explanation leaves about one for each piece of evidence; four standard deviations of that sum more is still good.
+/// A good explanation leaves about one for each piece of evidence; six standard deviations of that sum more is still good, since
+/// real readings have their bad days.
 fn serves(raw: f64, count: usize) -> bool {
     let n = count as f64;
-    raw <= n + 4.0 * (2.0 * n).sqrt()
+    raw <= n + 6.0 * (2.0 * n).sqrt()
 }
 
 /// All slips are alike at first; one that has several forms on this row (ten degrees more or less, on this compass or that; one
@@ -63,12 +64,10 @@ pub fn explain(row: &Row, context: &Context, bodies: &[Body], gain: f64) -> Vec<
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
     let mut found: Vec<Explanation> = Vec::new();
     let Some(best) = singles.first().map(|t| t.total()) else {
-        return pairs(row, &tried, &list, context, none).map(|(a, b, total)| Explanation {
-            slip: a.slip,
-            place: a.place,
-            with: Some((b.slip, b.place)),
-            left_deg: left_deg(total),
-        }).into_iter().collect();
+        return pairs(row, &tried, &list, context, none)
+            .map(|(a, b, total)| Explanation { slip: a.slip, place: a.place, with: Some((b.slip, b.place)), left_deg: left_deg(total) })
+            .into_iter()
+            .collect();
     };
     for t in singles {
         if t.total() > best + DROP || found.len() == MOST {
@@ -105,7 +104,8 @@ fn pairs(row: &Row, tried: &[Tried], list: &[Candidate], context: &Context, none
 /// The gyro error of `row` with that slip undone, degrees.
 pub fn gyro_error_without(row: &Row, slip: Slip, place: Place, limits: &Limits) -> Option<f64> {
     let sight = Sight::of(row, limits)?;
-    let context = Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], speed_kn: None, limits };
+    let context =
+        Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], speed_kn: None, limits };
     let candidate = candidates(row, &sight, &context, &[]).into_iter().find(|c| c.slip == slip && c.place == place)?;
     let so = candidate.made(&Case::plain(sight))?.so;
     Some(wrap_180_deg(so.look()?.azimuth - so.gyro?))

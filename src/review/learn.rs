@@ -178,11 +178,8 @@ fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -
 impl Logbook {
     fn feed(&mut self, row: &Row, affected: bool) {
         let names = row.names;
-        let gyro = index(
-            &mut self.gyros,
-            |(g, r)| g == names.gyro && r == names.repeater,
-            || (names.gyro.to_owned(), names.repeater.to_owned()),
-        );
+        let gyro =
+            index(&mut self.gyros, |(g, r)| g == names.gyro && r == names.repeater, || (names.gyro.to_owned(), names.repeater.to_owned()));
         let compass = index(&mut self.compasses, |c| c == names.magnetic_compass, || names.magnetic_compass.to_owned());
         self.facts.push(Fact::of(row, gyro, compass, affected));
         self.copy_of_an_earlier(row);

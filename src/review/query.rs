@@ -187,7 +187,11 @@ impl Query {
             Self::BelowHorizon { altitude_deg, least_deg, .. } => 20.0 + (least_deg - altitude_deg),
             Self::NotDark { sun_altitude_deg, most_deg, .. } => 20.0 + (sun_altitude_deg - most_deg),
             Self::FarFromHorizon { off_deg, most_deg, how, .. } => {
-                if how == OffHorizon::Away { off_deg.abs() / most_deg } else { 30.0 }
+                if how == OffHorizon::Away {
+                    off_deg.abs() / most_deg
+                } else {
+                    30.0
+                }
             }
             Self::AzimuthDiffers { by_deg, most_deg }
             | Self::Arithmetic { by_deg, most_deg, .. }
@@ -278,7 +282,10 @@ impl fmt::Display for Query {
                         write!(f, "Is it the time or the word? At the time written the body was on the horizon, but not at its {event}.")
                     }
                     OffHorizon::Never => {
-                        write!(f, "Is the date or the latitude another one? There and then the body does not come to that horizon: no {event}.")
+                        write!(
+                            f,
+                            "Is the date or the latitude another one? There and then the body does not come to that horizon: no {event}."
+                        )
                     }
                 }
             }

@@ -52,12 +52,8 @@ impl Fit {
     /// Standard uncertainty of the fitted value for the columns `x`.
     pub fn value_u(&self, x: &[f64]) -> f64 {
         let n = self.coefficients.len();
-        let sum: f64 = self
-            .covariance
-            .chunks(n.max(1))
-            .zip(x)
-            .map(|(row, xi)| xi * row.iter().zip(x).map(|(c, xj)| c * xj).sum::<f64>())
-            .sum();
+        let sum: f64 =
+            self.covariance.chunks(n.max(1)).zip(x).map(|(row, xi)| xi * row.iter().zip(x).map(|(c, xj)| c * xj).sum::<f64>()).sum();
         sum.max(0.0).sqrt()
     }
 

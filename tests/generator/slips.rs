@@ -1,8 +1,8 @@
 //! Every slip of the review, put into an entry on purpose.
 
+use super::Rng;
 use super::ship::{Kind, Ship};
 use super::voyage::{Entry, Style, Truth, deviation_deg, on_horizon, seen, stars, tenth, write_results};
-use super::Rng;
 use shadowpin::angle::{wrap_180_deg, wrap_360_deg};
 use shadowpin::horizon::{HorizonLine, Limb, triangle};
 use shadowpin::sky::{self, Body};
@@ -87,7 +87,7 @@ fn line(entry: &Entry, visible: bool) -> HorizonLine {
 
 /// Days of the civil calendar from 1970-01-01 and back (proleptic Gregorian), by chrono.
 fn day_month_exchanged(unix_s: i64) -> Option<i64> {
-    use chrono::{Datelike, DateTime};
+    use chrono::{DateTime, Datelike};
     let at = DateTime::from_timestamp(unix_s, 0)?;
     let swapped = at.with_day(1)?.with_month(at.day())?.with_day(at.month())?;
     (swapped != at).then(|| swapped.timestamp())
@@ -145,7 +145,11 @@ fn apply(slip: &str, place: Where, ship: &Ship, before: &[Entry], e: &mut Entry,
     };
     if time.is_some() || position.is_some() {
         let (unix_s, (lat, lon)) = (time.unwrap_or(e.unix_s), position.unwrap_or((e.lat, e.lon)));
-        let other = if e.method == "azimuth" { worked(e, body, unix_s, lat, lon)? } else { worked(e, body, unix_s, lat, lon).unwrap_or(azimuth + 20.0) };
+        let other = if e.method == "azimuth" {
+            worked(e, body, unix_s, lat, lon)?
+        } else {
+            worked(e, body, unix_s, lat, lon).unwrap_or(azimuth + 20.0)
+        };
         if place == Where::Record {
             (e.unix_s, e.lat, e.lon) = (unix_s, lat, lon);
         } else {

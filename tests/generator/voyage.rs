@@ -111,8 +111,30 @@ pub fn tenth(deg: f64) -> f64 {
 }
 
 const STARS: [&str; 24] = [
-    "Achernar", "Acrux", "Aldebaran", "Altair", "Antares", "Arcturus", "Betelgeuse", "Canopus", "Capella", "Deneb", "Fomalhaut", "Hadar",
-    "Pollux", "Procyon", "Regulus", "Rigel", "Rigil Kentaurus", "Sirius", "Spica", "Vega", "Adhara", "Bellatrix", "Miaplacidus", "Shaula",
+    "Achernar",
+    "Acrux",
+    "Aldebaran",
+    "Altair",
+    "Antares",
+    "Arcturus",
+    "Betelgeuse",
+    "Canopus",
+    "Capella",
+    "Deneb",
+    "Fomalhaut",
+    "Hadar",
+    "Pollux",
+    "Procyon",
+    "Regulus",
+    "Rigel",
+    "Rigil Kentaurus",
+    "Sirius",
+    "Spica",
+    "Vega",
+    "Adhara",
+    "Bellatrix",
+    "Miaplacidus",
+    "Shaula",
 ];
 
 /// The stars that the log's officers know.
@@ -139,7 +161,13 @@ fn choose(unix_s: i64, lat: f64, lon: f64, rng: &mut Rng) -> Option<(Body, &'sta
         return None;
     }
     let mut up: Vec<Body> = stars();
-    up.extend([Body::Moon, Body::Planet(Planet::Venus), Body::Planet(Planet::Mars), Body::Planet(Planet::Jupiter), Body::Planet(Planet::Saturn)]);
+    up.extend([
+        Body::Moon,
+        Body::Planet(Planet::Venus),
+        Body::Planet(Planet::Mars),
+        Body::Planet(Planet::Jupiter),
+        Body::Planet(Planet::Saturn),
+    ]);
     up.retain(|b| seen(*b, unix_s, lat, lon).is_some_and(|(_, altitude)| (8.0..55.0).contains(&altitude)));
     (!up.is_empty()).then(|| (rng.pick(&up), "azimuth", unix_s))
 }
@@ -295,9 +323,7 @@ fn observe(ship: &Ship, entry: &mut Entry, (wander, local, after_step): (f64, f6
         let real = visible || ship.kind == Kind::VisibleHorizon;
         let Some((azimuth, at)) = on_horizon(body, rising, line(real), entry.unix_s, entry.lat, entry.lon) else { return };
         entry.unix_s = at + rng.normal(25.0) as i64;
-        let Some((worked, _)) =
-            on_horizon(body, rising, line(entry.horizon == "visible"), entry.unix_s, entry.lat, entry.lon)
-        else {
+        let Some((worked, _)) = on_horizon(body, rising, line(entry.horizon == "visible"), entry.unix_s, entry.lat, entry.lon) else {
             return;
         };
         (azimuth, worked)
@@ -316,7 +342,8 @@ fn observe(ship: &Ship, entry: &mut Entry, (wander, local, after_step): (f64, f6
     }
     let tilt = rng.normal(if ship.kind == Kind::Invented { 0.0 } else { 0.15 }) * altitude.max(0.0).to_radians().tan();
     // Bearings nobody read: worked backwards from the errors they should give, to the half degree below.
-    let (gyro_noise, compass_noise) = if ship.kind == Kind::Invented { (0.02, 0.05) } else { (style.gyro_noise_deg, style.compass_noise_deg) };
+    let (gyro_noise, compass_noise) =
+        if ship.kind == Kind::Invented { (0.02, 0.05) } else { (style.gyro_noise_deg, style.compass_noise_deg) };
     let gyro_wander = if ship.kind == Kind::Invented { wander } else { 0.0 };
     let gyro = azimuth - error + gyro_wander - sighting + tilt + rng.normal(gyro_noise);
     let compass = azimuth - magnetic - local - deviation_deg(ship.coefficients, heading) + tilt + rng.normal(compass_noise);

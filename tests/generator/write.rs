@@ -50,9 +50,27 @@ pub fn shows(entry: &Entry, columns: Columns) -> bool {
 fn names(columns: Columns) -> Vec<&str> {
     let time = if columns.ship_time { &["ship_time", "zone"][..] } else { &["utc"][..] };
     let rest = [
-        "lat", "lon", "body", "method", "horizon", "eye_height_m", "mark", "charted_bearing", "repeater", "gyro_bearing", "compass_bearing",
-        "gyro_heading", "compass_heading", "speed_kn", "logged_azimuth", "logged_gyro_error", "logged_compass_error", "logged_variation",
-        "logged_deviation", "observer", "remarks",
+        "lat",
+        "lon",
+        "body",
+        "method",
+        "horizon",
+        "eye_height_m",
+        "mark",
+        "charted_bearing",
+        "repeater",
+        "gyro_bearing",
+        "compass_bearing",
+        "gyro_heading",
+        "compass_heading",
+        "speed_kn",
+        "logged_azimuth",
+        "logged_gyro_error",
+        "logged_compass_error",
+        "logged_variation",
+        "logged_deviation",
+        "observer",
+        "remarks",
     ];
     ["vessel"].iter().chain(time).chain(rest.iter()).copied().filter(|name| !columns.without.contains(name)).collect()
 }
@@ -80,7 +98,13 @@ fn cell(e: &Entry, name: &str) -> String {
         "body" => e.body.map_or(String::new(), |b| b.name().to_owned()),
         "method" => e.method.to_owned(),
         "horizon" => e.horizon.to_owned(),
-        "eye_height_m" => if e.body.is_some() { format!("{:.0}", e.eye_height_m) } else { String::new() },
+        "eye_height_m" => {
+            if e.body.is_some() {
+                format!("{:.0}", e.eye_height_m)
+            } else {
+                String::new()
+            }
+        }
         "mark" => e.mark.map_or(String::new(), |(name, _)| name.to_owned()),
         "charted_bearing" => number(e.mark.map(|(_, bearing)| bearing), 1),
         "repeater" => e.repeater.to_owned(),

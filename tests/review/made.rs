@@ -28,12 +28,8 @@ fn place(place: Where) -> &'static str {
 /// Reviews one log of that house; the table, and what was named against what should have been.
 fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) {
     let mut rng = Rng::new(seed);
-    let ships: Vec<Ship> = house
-        .kinds
-        .iter()
-        .enumerate()
-        .map(|(at, kind)| Ship::draw(&format!("Vessel {at}"), *kind, house.lat_band, &mut rng))
-        .collect();
+    let ships: Vec<Ship> =
+        house.kinds.iter().enumerate().map(|(at, kind)| Ship::draw(&format!("Vessel {at}"), *kind, house.lat_band, &mut rng)).collect();
     let log = Log::of(&ships, house.style, house.mixed);
     let rows = read(&csv(&log, house.columns));
     let (fleet, verdicts) = review(&rows, &Limits::default());
@@ -49,7 +45,10 @@ fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) 
         table.add(&known, verdict);
         if std::env::var("SHOW").is_ok_and(|s| s == house.name) {
             let wolf = known.slip.is_none() && !known.pattern && !verdict.queries.is_empty();
-            let wrong = known.slip.as_ref().is_some_and(|s| known.shift_deg >= 2.0 && verdict.slips.first().is_none_or(|f| !f.to_string().starts_with(s.as_str())));
+            let wrong = known
+                .slip
+                .as_ref()
+                .is_some_and(|s| known.shift_deg >= 2.0 && verdict.slips.first().is_none_or(|f| !f.to_string().starts_with(s.as_str())));
             if wolf || wrong {
                 println!(
                     "{seed} {} {kind:?} {:?} {} {:.1} {} {:?} lat {} lon {} | {} | {}",
@@ -65,13 +64,6 @@ fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) 
                     verdict.slips.iter().map(|s| format!("{s}{:?}", s.place)).collect::<Vec<_>>().join(";")
                 );
             }
-        }
-    }
-    if std::env::var("DETAIL").is_ok() {
-        let summary = shadowpin::review::Summary::of(&fleet, &shadowpin::review::Tally::default());
-        for v in &summary.vessels {
-            let kind = ships.iter().find(|s| s.name == v.vessel).unwrap().kind;
-            println!("DETAIL {} {seed} {kind:?} {} {:?} {:?} {:?}", house.name, v.observations, v.patterns, v.gyros, v.not_evaluated);
         }
     }
     let named = ships.iter().map(|s| (s.kind, fleet.patterns(&s.name).map(|p| p.id()).collect())).collect();
@@ -194,7 +186,10 @@ fn columns_missing() {
     for (name, without) in [
         ("no logged azimuth", &["logged_azimuth"][..]),
         ("no headings", &["gyro_heading", "compass_heading", "speed_kn"][..]),
-        ("no magnetic compass", &["compass_bearing", "compass_heading", "logged_compass_error", "logged_variation", "logged_deviation"][..]),
+        (
+            "no magnetic compass",
+            &["compass_bearing", "compass_heading", "logged_compass_error", "logged_variation", "logged_deviation"][..],
+        ),
     ] {
         let house = House {
             name,

@@ -57,13 +57,15 @@ fn row(number: u64, cells: &HashMap<&str, &str>) -> Read {
         let (date, clock) = time::text::read_date_time(cells.get("ship_time")?, time::text::DateOrder::Iso).unwrap();
         Some(time::text::moment(date, clock, zone?).unwrap())
     });
-    let place = number_of("lat").zip(number_of("lon")).map(|(lat, lon)| Place { position: Position::from_deg(lat, lon).unwrap(), step_deg: 0.001 });
+    let place =
+        number_of("lat").zip(number_of("lon")).map(|(lat, lon)| Place { position: Position::from_deg(lat, lon).unwrap(), step_deg: 0.001 });
     let body = cells.get("body").map(|b| Body::from_name(b).unwrap());
     let target = match (cell("method"), body) {
         ("none", _) => None,
         ("comparison", _) => Some(Target::Headings),
-        ("transit", _) => direction("charted_bearing")
-            .map(|b| Target::Mark { charted: TrueBearing::wrapping_deg(b.value), step_deg: b.step_deg }),
+        ("transit", _) => {
+            direction("charted_bearing").map(|b| Target::Mark { charted: TrueBearing::wrapping_deg(b.value), step_deg: b.step_deg })
+        }
         ("rising" | "setting", Some(body)) => Some(Target::OnHorizon {
             body,
             event: if cell("method") == "rising" { RisingOrSetting::Rising } else { RisingOrSetting::Setting },
