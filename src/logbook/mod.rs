@@ -1,7 +1,10 @@
 //! The log: its columns and their reading.
 
 pub mod card;
+pub mod columns;
+pub mod entry;
 mod figures;
+pub mod log;
 pub mod swing;
 mod table;
 

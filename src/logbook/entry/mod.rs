@@ -1,0 +1,147 @@
+//! One row of a log read: who, when, where, what was observed, what the officer made of it, and every fault in it.
+
+mod fault;
+mod figures;
+mod place;
+mod target;
+mod when;
+
+pub use fault::{Fault, Faults};
+
+use super::columns::Column;
+use super::log::Cells;
+use crate::angle::Reading;
+use crate::angle::text::ErrorSign;
+use crate::compass::{Observation, Place};
+use crate::time::text::DateOrder;
+use crate::time::{Moment, Zone};
+use std::borrow::Cow;
+
+/// How cells are to be understood.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub struct ReadAs {
+    /// Whether figures are written with a decimal comma.
+    pub decimal_comma: bool,
+    /// Order of dates in figures.
+    pub date_order: DateOrder,
+    /// What an unlettered logged gyro error means.
+    pub logged_sign: ErrorSign,
+}
+
+/// What the officer worked out, east +.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct Logged {
+    /// Azimuth, degrees.
+    pub azimuth: Option<Reading<f64>>,
+    /// Gyro error, degrees.
+    pub gyro_error: Option<Reading<f64>>,
+    /// Compass error, degrees.
+    pub compass_error: Option<Reading<f64>>,
+    /// Variation, degrees.
+    pub variation: Option<Reading<f64>>,
+    /// Deviation, degrees.
+    pub deviation: Option<Reading<f64>>,
+}
+
+/// One row, read.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Entry<'r> {
+    /// The vessel; blank is one vessel.
+    pub vessel: Cow<'r, str>,
+    /// The gyro.
+    pub gyro: Cow<'r, str>,
+    /// The repeater.
+    pub repeater: Cow<'r, str>,
+    /// The magnetic compass.
+    pub magnetic_compass: Cow<'r, str>,
+    /// When.
+    pub moment: Option<Moment>,
+    /// The zone that was written, with a ship's time or beside UTC.
+    pub zone: Option<Zone>,
+    /// Where.
+    pub place: Option<Place>,
+    /// What was observed; `None` where the row says that nothing could be had, or where a fault stands in the way.
+    pub observation: Option<Observation>,
+    /// Whether the row says that nothing could be had (method `none`).
+    pub nothing_had: bool,
+    /// What the officer worked out.
+    pub logged: Logged,
+    /// Remarks.
+    pub remarks: Cow<'r, str>,
+}
+
+/// Reads one row. Every fault is put into `faults`; what can be read in spite of them is read.
+///
+/// A fault in what the direction is reckoned from (time, place, body, method, horizon, charted bearing) leaves the row without an
+/// observation; one in a reading or a logged figure leaves that figure blank. A row that says nothing could be had is never at fault.
+pub fn read_entry<'r>(cells: &'r impl Cells, read_as: ReadAs, faults: &mut Faults) -> Entry<'r> {
+    let mut reader = Reader { cells, read_as, faults };
+    let mut entry = Entry {
+        vessel: cells.text(Column::Vessel),
+        gyro: cells.text(Column::Gyro),
+        repeater: cells.text(Column::Repeater),
+        magnetic_compass: cells.text(Column::MagneticCompass),
+        moment: None,
+        zone: None,
+        place: None,
+        observation: None,
+        nothing_had: false,
+        logged: Logged::default(),
+        remarks: cells.text(Column::Remarks),
+    };
+    let method = reader.method();
+    entry.nothing_had = method == Some(target::Method::None);
+    let needed = !matches!(method, Some(target::Method::None | target::Method::Transit | target::Method::Comparison));
+    (entry.moment, entry.zone) = reader.moment(needed);
+    entry.place = reader.place(needed);
+    if entry.nothing_had {
+        faults.clear();
+        return entry;
+    }
+    let target = method.and_then(|m| reader.target(m));
+    entry.logged = reader.logged();
+    let observation = reader.readings();
+    entry.observation = target.filter(|_| !reader.faults.essential()).map(|target| Observation {
+        target,
+        moment: entry.moment,
+        place: entry.place,
+        ..observation
+    });
+    entry
+}
+
+/// Reads cells and gathers faults.
+struct Reader<'a, C> {
+    cells: &'a C,
+    read_as: ReadAs,
+    faults: &'a mut Faults,
+}
+
+impl<'a, C: Cells> Reader<'a, C> {
+    /// The cell where it is not blank; a decimal comma is read as a point where the log has them.
+    fn cell(&self, column: Column) -> Option<Cow<'a, str>> {
+        let text = self.cells.text(column);
+        if text.is_empty() {
+            return None;
+        }
+        Some(text)
+    }
+
+    /// The cell as figures are written.
+    fn figure(&self, column: Column) -> Option<Cow<'a, str>> {
+        let text = self.cell(column)?;
+        if self.read_as.decimal_comma && text.contains(',') { Some(Cow::Owned(text.replace(',', "."))) } else { Some(text) }
+    }
+
+    /// The value of a cell that is not blank; a fault where it cannot be read.
+    fn read<T>(&mut self, column: Column, read: impl FnOnce(&str) -> Result<T, crate::error::BadValue>) -> Option<T> {
+        let text = self.figure(column)?;
+        match read(&text) {
+            Ok(value) => Some(value),
+            Err(bad) => {
+                self.faults.add(column, bad);
+                None
+            }
+        }
+    }
+}

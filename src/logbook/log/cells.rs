@@ -1,0 +1,29 @@
+//! The cells of one row, by column.
+
+use crate::logbook::columns::Column;
+use std::borrow::Cow;
+
+/// Anything that has cells under the log's columns: a row of a file, or options of a command line.
+pub trait Cells {
+    /// The cell as it stands, untrimmed; blank where there is none.
+    fn bytes(&self, column: Column) -> &[u8];
+
+    /// The cell as text, trimmed.
+    ///
+    /// Bytes that are not UTF-8 are taken for what spreadsheets write as single bytes: the degree sign, fractions, dashes and minute
+    /// marks of Windows-1252; any other is shown as unreadable.
+    fn text(&self, column: Column) -> Cow<'_, str> {
+        text_of(self.bytes(column))
+    }
+}
+
+/// A cell's bytes as trimmed text.
+pub(crate) fn text_of(bytes: &[u8]) -> Cow<'_, str> {
+    match std::str::from_utf8(bytes) {
+        Ok(text) => Cow::Borrowed(text.trim()),
+        Err(_) => {
+            let (text, _) = encoding_rs::WINDOWS_1252.decode_without_bom_handling(bytes);
+            Cow::Owned(text.trim().to_owned())
+        }
+    }
+}

@@ -1,0 +1,11 @@
+//! Reading a log row by row.
+
+mod cells;
+mod header;
+mod reader;
+mod record;
+
+pub use cells::Cells;
+pub use header::Header;
+pub use reader::{LogReader, LogRow};
+pub use record::{LONGEST_ROW, Record};

@@ -1,0 +1,75 @@
+//! A log: a header, and rows under it.
+
+use super::cells::Cells;
+use super::header::Header;
+use super::record::{Record, Records};
+use crate::error::{Error, Result};
+use crate::logbook::columns::Column;
+use std::io::Read;
+
+/// A row of a log with the header that names its cells.
+#[derive(Debug, Clone, Copy)]
+pub struct LogRow<'r> {
+    /// Where each column stands.
+    pub header: &'r Header,
+    /// The cells.
+    pub record: &'r Record,
+    /// Number of the data row, from 1.
+    pub number: u64,
+}
+
+impl Cells for LogRow<'_> {
+    fn bytes(&self, column: Column) -> &[u8] {
+        self.header.place(column).and_then(|i| self.record.cell(i)).unwrap_or_default()
+    }
+}
+
+/// Reads a log.
+pub struct LogReader<R: Read> {
+    records: Records<R>,
+    rows: u64,
+    /// The header's cells as they stand.
+    pub titles: Record,
+    /// Where each column stands.
+    pub header: Header,
+}
+
+impl<R: Read> LogReader<R> {
+    /// Opens a log and reads its header. `name` stands in messages; `again` says that the columns this program adds may be there from
+    /// an earlier run and are to be replaced.
+    ///
+    /// # Errors
+    /// [`Error::Content`] for a file without a usable header; [`Error::Stream`] where reading fails.
+    pub fn new(source: R, name: &str, again: bool) -> Result<Self> {
+        let mut records = Records::new(source)?;
+        let mut titles = Record::default();
+        let content = |line, message: String| Error::Content { file: name.to_owned(), line, message };
+        if !records.next(&mut titles)? {
+            return Err(content(0, "the file is empty: a header with the columns' names was expected".into()));
+        }
+        let header = Header::read(titles.cells(), again).map_err(|message| content(titles.line, message))?;
+        Ok(Self { records, rows: 0, titles, header })
+    }
+
+    /// What parts the cells.
+    pub fn delimiter(&self) -> u8 {
+        self.records.delimiter
+    }
+
+    /// Whether the file began with a line that names its separator.
+    pub fn names_separator(&self) -> bool {
+        self.records.names_separator
+    }
+
+    /// The next row, its cells in `record`; `None` at the end. Empty lines are passed over; a row of blank cells is a row.
+    ///
+    /// # Errors
+    /// [`Error::Stream`] where reading fails.
+    pub fn next<'r>(&'r mut self, record: &'r mut Record) -> Result<Option<LogRow<'r>>> {
+        if !self.records.next(record)? {
+            return Ok(None);
+        }
+        self.rows += 1;
+        Ok(Some(LogRow { header: &self.header, record, number: self.rows }))
+    }
+}
