@@ -174,7 +174,7 @@ fn ships_time_instead_of_utc() {
         kinds: &GOOD,
         lat_band: ORDINARY,
         style: Style { slips: 0.1, ..Style::default() },
-        columns: Columns { ship_time: true, without: &[] },
+        columns: Columns { ship_time: true, ..Columns::default() },
         mixed: true,
     };
     hold(&house, 50..52, 0.85, 0.95);
@@ -196,7 +196,7 @@ fn columns_missing() {
             kinds: &GOOD,
             lat_band: ORDINARY,
             style: Style { slips: 0.1, ..Style::default() },
-            columns: Columns { ship_time: false, without },
+            columns: Columns { without, ..Columns::default() },
             mixed: true,
         };
         hold(&house, 60..62, 0.7, 0.85);

@@ -23,6 +23,9 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
     let mut not = Vec::new();
     for gyro in &vessel.runs {
         let facts: Vec<&Fact> = vessel.facts.iter().filter(|f| gyro.repeaters.contains(&f.gyro) && f.gyro_error_deg().is_some()).collect();
+        if facts.is_empty() && vessel.runs.len() > 1 {
+            continue;
+        }
         let run = gyro.run.as_ref().filter(|r| r.established());
         let found = run.map(|r| named(vessel, gyro, r, limits)).unwrap_or_default();
         for id in [
