@@ -38,7 +38,7 @@ impl Input {
     }
 
     /// The content from its start.
-    pub fn from_start(&mut self) -> Result<&mut (impl Read + use<>)> {
+    pub fn rewound(&mut self) -> Result<&mut (impl Read + use<>)> {
         self.file.rewind().map_err(|source| Error::File { path: self.path.clone().unwrap_or_else(|| self.name.clone().into()), source })?;
         Ok(&mut self.file)
     }

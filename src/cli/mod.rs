@@ -11,6 +11,7 @@ mod one_row;
 mod output;
 mod plan;
 mod read;
+mod review;
 mod self_check;
 mod swing;
 mod variation;
@@ -36,6 +37,7 @@ enum Command {
     Azimuth(azimuth::Args),
     Amplitude(amplitude::Args),
     Plan(plan::Args),
+    Review(Box<review::Args>),
     Limits(limits::Args),
     SelfCheck(self_check::Args),
     /// A deviation curve from the deviations of a swing
@@ -68,6 +70,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Azimuth(args) => azimuth::run(args),
         Command::Amplitude(args) => amplitude::run(args),
         Command::Plan(args) => plan::run(args),
+        Command::Review(args) => review::run(*args),
         Command::Limits(args) => limits::run(args),
         Command::SelfCheck(args) => self_check::run(args),
         Command::Swing(args) => swing::run(args),

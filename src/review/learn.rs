@@ -149,8 +149,9 @@ impl Learn {
         self.queries.clear();
         row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
         let unrounded = unrounded(row, &self.queries);
-        let affected = !unrounded && row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG)
-            || !unrounded && self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. }));
+        let wild = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG);
+        let affected =
+            !unrounded && (wild || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. })));
         if let Some(vessel) = self.vessels.get_mut(at) {
             vessel.unrounded += u64::from(unrounded);
             vessel.feed(row, affected);

@@ -16,6 +16,7 @@ mod candidates;
 mod case;
 mod checks;
 mod curve;
+mod desk;
 mod evidence;
 mod explain;
 mod fact;
@@ -33,6 +34,7 @@ mod slip;
 mod summary;
 mod vessel;
 
+pub use desk::{Desk, WorkedEntry, names};
 pub use fleet::Fleet;
 pub use judge::{Verdict, judge};
 pub use learn::Learn;

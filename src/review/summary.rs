@@ -43,6 +43,11 @@ impl Tally {
         }
     }
 
+    /// Counts a row that was judged though a part of it could not be used.
+    pub fn add_fault(&mut self) {
+        self.problems += 1;
+    }
+
     /// Counts a row that could not be used.
     pub fn add_problem(&mut self) {
         self.rows += 1;

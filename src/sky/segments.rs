@@ -7,11 +7,14 @@ const GRID_START: f64 = -36_526.0;
 /// Days that the grid covers, past the end of 2100.
 const GRID_DAYS: f64 = 73_424.0;
 
+/// The coefficients of one stretch, once they are fitted.
+type Stretch<const N: usize, const K: usize> = OnceLock<Box<[[f64; K]; N]>>;
+
 /// A quantity of `N` numbers as Chebyshev polynomials of `K` coefficients over stretches of equal length.
 pub(super) struct Segments<const N: usize, const K: usize> {
     stretch_days: f64,
     exact: fn(f64) -> [f64; N],
-    fitted: OnceLock<Box<[OnceLock<Box<[[f64; K]; N]>>]>>,
+    fitted: OnceLock<Box<[Stretch<N, K>]>>,
 }
 
 impl<const N: usize, const K: usize> Segments<N, K> {

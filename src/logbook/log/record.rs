@@ -72,7 +72,7 @@ impl<R: Read> Records<R> {
             .utf8_passthru(true)
             .build_with_buffer(source, vec![0; 8 << 10]);
         let mut records = Self {
-            source: source.map_err(|e| reading(e.into()))?,
+            source: source.map_err(reading)?,
             core: csv_core::Reader::new(),
             buffer: vec![0; BUFFER],
             filled: 0,
