@@ -266,8 +266,15 @@ fn digits_swapped(deg: f64) -> Vec<f64> {
 
 /// 247 for 253: as far from the printed ten, on its other side.
 fn read_backwards(deg: f64) -> Vec<f64> {
-    let ten = (deg / 10.0).round() * 10.0;
-    if deg == ten { Vec::new() } else { vec![wrap_360_deg(2.0 * ten - deg)] }
+    let past = deg.rem_euclid(10.0);
+    let (below, above) = (deg - past, deg - past + 10.0);
+    let about = |ten: f64| wrap_360_deg(2.0 * ten - deg);
+    match past {
+        0.0 => Vec::new(),
+        5.0 => vec![about(below), about(above)],
+        p if p < 5.0 => vec![about(below)],
+        _ => vec![about(above)],
+    }
 }
 
 fn bearings(list: &mut List) {

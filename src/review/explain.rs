@@ -35,10 +35,11 @@ impl Tried {
     }
 }
 
-/// A good explanation leaves about one for each piece of evidence; four standard deviations of that sum more is still good.
+/// A good explanation leaves about one for each piece of evidence; six standard deviations of that sum more is still good, since
+/// real readings have their bad days.
 fn serves(raw: f64, count: usize) -> bool {
     let n = count as f64;
-    raw <= n + 4.0 * (2.0 * n).sqrt()
+    raw <= n + 6.0 * (2.0 * n).sqrt()
 }
 
 /// All slips are alike at first; one that has several forms on this row (ten degrees more or less, on this compass or that; one

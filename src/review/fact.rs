@@ -95,15 +95,16 @@ impl Fact {
             flags |= flag::OBSERVED;
         }
         let gyro_error = worked.gyro_error.map(|g| g.value.deg());
-        let true_heading = row.observation.and_then(|o| o.gyro_heading).map(|h| h.value.deg() + gyro_error.unwrap_or(0.0));
-        if let (Some(azimuth), Some(heading)) = (worked.true_azimuth, true_heading) {
-            flags |= if wrap_180_deg(azimuth.deg() - heading) >= 0.0 { flag::STARBOARD } else { flag::PORT };
+        // The gyro's own error is left out: a misread bearing must not turn the ship round.
+        let heading = row.observation.and_then(|o| heading_deg(row, o));
+        if let Some(relative) = row.observation.and_then(|o| Some(o.gyro_bearing?.value.deg() - o.gyro_heading?.value.deg())) {
+            flags |= if wrap_180_deg(relative) >= 0.0 { flag::STARBOARD } else { flag::PORT };
         }
         let (deviation, lacks_gyro) = deviation(row);
         if lacks_gyro {
             flags |= flag::LACKS_GYRO;
         }
-        let speed_error = row.observation.and_then(|o| speed_error_deg(o, true_heading?));
+        let speed_error = row.observation.and_then(|o| speed_error_deg(o, heading?));
         let on_horizon = match (row.observation.map(|o| o.target), row.place, worked.true_azimuth) {
             (Some(Target::OnHorizon { .. }), Some(place), Some(azimuth)) if place.position.lat.deg().abs() > 15.0 => {
                 azimuth_per_altitude_on_horizon(place.position.lat, azimuth).clamp(-20.0, 20.0)
@@ -199,13 +200,19 @@ impl Fact {
     }
 }
 
+/// Ship's head from north, to a few degrees.
+fn heading_deg(row: &Row, o: &Observation) -> Option<f64> {
+    let by_compass = || Some(o.compass_heading?.value.deg() + row.worked.variation?.value.deg());
+    o.gyro_heading.map(|h| h.value.deg()).or_else(by_compass)
+}
+
 /// V cos C / (5 pi cos lat): what a spinning gyro without a speed corrector is off by, west on northerly courses.
-fn speed_error_deg(observation: &Observation, true_heading: f64) -> Option<f64> {
+fn speed_error_deg(observation: &Observation, heading: f64) -> Option<f64> {
     if observation.gyro_type != crate::compass::GyroType::Spinning {
         return None;
     }
     let cos_lat = observation.place?.position.lat.deg().to_radians().cos().max(0.05);
-    Some(observation.speed_kn? * true_heading.to_radians().cos() / (SPEED_ERROR_KN * cos_lat))
+    Some(observation.speed_kn? * heading.to_radians().cos() / (SPEED_ERROR_KN * cos_lat))
 }
 
 /// Deviation by bearing or by comparison, and whether the gyro's error is still missing in it.

@@ -149,8 +149,9 @@ impl Learn {
         self.queries.clear();
         row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
         let unrounded = unrounded(row, &self.queries);
-        let affected = !unrounded && row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG)
-            || !unrounded && self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. }));
+        let wild = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG);
+        let affected =
+            !unrounded && (wild || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. })));
         if let Some(vessel) = self.vessels.get_mut(at) {
             vessel.unrounded += u64::from(unrounded);
             vessel.feed(row, affected);
@@ -178,9 +179,14 @@ fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -
 impl Logbook {
     fn feed(&mut self, row: &Row, affected: bool) {
         let names = row.names;
-        let gyro =
-            index(&mut self.gyros, |(g, r)| g == names.gyro && r == names.repeater, || (names.gyro.to_owned(), names.repeater.to_owned()));
-        let compass = index(&mut self.compasses, |c| c == names.magnetic_compass, || names.magnetic_compass.to_owned());
+        // An entry without an observation names no compass of its own.
+        let (gyro, compass) = if row.observation.is_some() {
+            let make = || (names.gyro.to_owned(), names.repeater.to_owned());
+            let gyro = index(&mut self.gyros, |(g, r)| g == names.gyro && r == names.repeater, make);
+            (gyro, index(&mut self.compasses, |c| c == names.magnetic_compass, || names.magnetic_compass.to_owned()))
+        } else {
+            (0, 0)
+        };
         self.facts.push(Fact::of(row, gyro, compass, affected));
         self.copy_of_an_earlier(row);
         let Some(observation) = row.observation else { return };

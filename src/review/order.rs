@@ -59,24 +59,33 @@ fn mark_order(facts: &mut [Fact]) {
     }
 }
 
-/// Where either of two neighbours could go, the one that raises a query by itself goes.
+/// Where either of two neighbours could go, the one that raises a query by itself goes; of two alike, the one that lies further
+/// from the rows on either side.
 fn prefer_sound(facts: &[Fact], timed: &[(usize, i64)], kept: &mut [bool]) {
     let affected = |at: usize| timed.get(at).and_then(|t| facts.get(t.0)).is_some_and(Fact::affected);
     let time = |at: usize| timed.get(at).map(|t| t.1);
     for out in 0..timed.len() {
-        if kept.get(out).copied().unwrap_or(true) || affected(out) {
+        if kept.get(out).copied().unwrap_or(true) {
             continue;
         }
         for other in [out.checked_sub(1), Some(out + 1)].into_iter().flatten() {
-            if !kept.get(other).copied().unwrap_or(false) || !affected(other) {
+            if !kept.get(other).copied().unwrap_or(false) {
                 continue;
             }
             let (first, last) = (out.min(other), out.max(other));
             let before = (0..first).rev().find(|&i| kept.get(i).copied().unwrap_or(false)).and_then(time);
             let after = (last + 1..timed.len()).find(|&i| kept.get(i).copied().unwrap_or(false)).and_then(time);
-            let now = time(out);
-            let fits = before.is_none_or(|b| now.is_some_and(|n| b <= n)) && after.is_none_or(|a| now.is_some_and(|n| n <= a));
-            if fits {
+            let (Some(now), Some(then)) = (time(out), time(other)) else { continue };
+            if before.is_some_and(|b| b > now) || after.is_some_and(|a| a < now) {
+                continue;
+            }
+            let away = |t: i64| before.map_or(0, |b| t - b).max(after.map_or(0, |a| a - t));
+            let better = match (affected(out), affected(other)) {
+                (false, true) => true,
+                (true, false) => false,
+                _ => away(now) * 2 < away(then),
+            };
+            if better {
                 if let Some(k) = kept.get_mut(out) {
                     *k = true;
                 }

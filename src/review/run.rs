@@ -2,7 +2,7 @@
 
 use super::fact::{Fact, flag};
 use super::pattern::PatternId;
-use super::robust::{self, Fit, median, scale_of_neighbours};
+use super::robust::{self, Fit, median, scale_about_zero, scale_of_neighbours};
 use crate::limits::Limits;
 
 /// Something a gyro's error may follow.
@@ -65,7 +65,7 @@ impl Term {
 
     /// Standard deviations that it must stand out by. What shows on a few rows only, and is looked for by its own shape, less.
     fn sure(self) -> f64 {
-        if self == Self::OnHorizon { 4.5 } else { 6.0 }
+        if self == Self::OnHorizon { 5.0 } else { 6.0 }
     }
 
     /// The least coefficient, and the least effect over the middle nine tenths of the rows (degrees), that is worth naming.
@@ -73,7 +73,7 @@ impl Term {
         match self {
             Self::Level | Self::Repeater(_) => (0.0, 0.0),
             Self::Speed => (0.4, 0.4),
-            Self::Latitude => (0.6, 0.8),
+            Self::Latitude => (0.6, 0.6),
             Self::Altitude => (0.6, 0.6),
             Self::OnHorizon => (0.35, 0.35),
             Self::Side => (0.8, 0.8),
@@ -123,24 +123,22 @@ impl Run {
         terms.extend(repeaters.iter().skip(1).map(|&r| Term::Repeater(r)));
         let base = terms.len();
         let mut fit = fit_terms(&terms, &facts)?;
-        let mut refused: Vec<Term> = Vec::new();
         while facts.len() >= LEAST_ROWS_TERMS && terms.len() < base + MOST_TERMS {
             let residuals = residuals(&terms, &fit, &facts);
             let noise = scale_of_neighbours(&residuals).unwrap_or(1.0).max(LEAST_SCALE_DEG);
-            let Some(found) = strongest(&terms, &refused, &facts, &residuals, noise, sides) else { break };
-            let mut with = terms.clone();
-            with.push(found);
-            let better = fit_terms(&with, &facts)?;
-            let (coefficient, u) = (better.coefficients.last().copied().unwrap_or(0.0).abs(), better.u(with.len() - 1));
-            if coefficient > found.least().0 && coefficient > (found.sure() - 1.0) * u && better.scale <= fit.scale * 1.02 {
-                terms = with;
-                fit = better;
-            } else {
-                refused.push(found);
-                if refused.len() > 6 {
-                    break;
-                }
-            }
+            // Several may stand out for one cause; the one that leaves least is it.
+            let best = standing_out(&terms, &facts, &residuals, noise, sides)
+                .into_iter()
+                .filter_map(|term| {
+                    let with: Vec<Term> = terms.iter().copied().chain([term]).collect();
+                    let better = fit_terms(&with, &facts)?;
+                    let (coefficient, u) = (better.coefficients.last()?.abs(), better.u(with.len() - 1));
+                    let sure = coefficient > term.least().0 && coefficient > (term.sure() - 1.0) * u && better.scale <= fit.scale * 1.02;
+                    sure.then(|| (left(&with, &better, &facts, noise), with, better))
+                })
+                .min_by(|a, b| a.0.total_cmp(&b.0));
+            let Some((_, with, better)) = best else { break };
+            (terms, fit) = (with, better);
         }
         let scatter_deg = fit.scale;
         Some(Self { terms, fit, rows: facts.len(), scatter_deg })
@@ -202,16 +200,16 @@ fn residuals(terms: &[Term], fit: &Fit, facts: &[&Fact]) -> Vec<f64> {
         .collect()
 }
 
-/// The term that stands out most in the residuals.
-fn strongest(have: &[Term], refused: &[Term], facts: &[&Fact], residuals: &[f64], noise: f64, sides: bool) -> Option<Term> {
-    let mut best: Option<(f64, Term)> = None;
-    let mut offer = |z: f64, term: Term| {
-        if z > term.sure() && best.is_none_or(|(b, _)| z > b) {
-            best = Some((z, term));
-        }
-    };
+/// What a fit leaves, each row counted to three times the noise at most.
+fn left(terms: &[Term], fit: &Fit, facts: &[&Fact], noise: f64) -> f64 {
+    residuals(terms, fit, facts).iter().map(|r| r.abs().min(3.0 * noise).powi(2)).sum()
+}
+
+/// The terms that stand out in the residuals.
+fn standing_out(have: &[Term], facts: &[&Fact], residuals: &[f64], noise: f64, sides: bool) -> Vec<Term> {
+    let mut found = Vec::new();
     for term in [Term::Speed, Term::Latitude, Term::Altitude, Term::OnHorizon, Term::Side] {
-        if have.contains(&term) || refused.contains(&term) || (term == Term::Side && !sides) {
+        if have.contains(&term) || (term == Term::Side && !sides) {
             continue;
         }
         let (x, y): (Vec<f64>, Vec<f64>) = facts
@@ -222,18 +220,18 @@ fn strongest(have: &[Term], refused: &[Term], facts: &[&Fact], residuals: &[f64]
             .unzip();
         if let Some((slope, u, spread)) = slope_by_classes(&x, &y, noise) {
             let (least, least_effect) = term.least();
-            if slope.abs() > least && slope.abs() * spread > least_effect {
-                offer(slope.abs() / u, term);
+            if slope.abs() > least && slope.abs() * spread > least_effect && slope.abs() > term.sure() * u {
+                found.push(term);
             }
         }
     }
     if let Some((z, at)) = step(facts, residuals, noise)
-        && !refused.iter().any(|r| matches!(r, Term::Step(t) if (t - at).abs() < 86_400))
+        && z > Term::Step(at).sure()
         && !have.iter().any(|h| matches!(h, Term::Step(t) if (t - at).abs() < 86_400))
     {
-        offer(z, Term::Step(at));
+        found.push(Term::Step(at));
     }
-    best.map(|(_, term)| term)
+    found
 }
 
 /// Classes of x that medians are taken in.
@@ -262,8 +260,14 @@ fn slope_by_classes(x: &[f64], y: &[f64], noise: f64) -> Option<(f64, f64, f64)>
         sxx += n * (px - mx).powi(2);
         sxy += n * (px - mx) * (py - my);
     }
+    if sxx < 1e-6 {
+        return None;
+    }
+    let slope = sxy / sxx;
+    // Where x jumps from row to row, neighbours differ by what it does to y: then what it leaves is the noise.
+    let own = scale_about_zero(x.iter().zip(y).map(|(x, y)| y - my - slope * (x - mx)))?.max(LEAST_SCALE_DEG);
     // The median of a normal sample is known 1.25 times less well than its mean.
-    (sxx > 1e-6).then(|| (sxy / sxx, 1.2533 * noise / sxx.sqrt(), spread))
+    Some((slope, 1.2533 * noise.min(own) / sxx.sqrt(), spread))
 }
 
 /// Rows looked at on each side of a step.

@@ -3,6 +3,7 @@
 //! Azimuths and variation are the library's own, which other tests hold against outside values; what is tested with these logs is
 //! the review.
 
+mod demo;
 mod rng;
 mod ship;
 mod slips;

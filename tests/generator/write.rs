@@ -7,6 +7,8 @@ use chrono::DateTime;
 /// How time is written, and which columns are not kept.
 #[derive(Debug, Clone, Copy, Default)]
 pub struct Columns<'a> {
+    /// As a ship writes it: positions in degrees and minutes with names, times to the minute, the instruments named.
+    pub by_hand: bool,
     /// Ship's time and zone instead of UTC.
     pub ship_time: bool,
     /// Names left out.
@@ -44,7 +46,11 @@ fn number(value: Option<f64>, decimals: usize) -> String {
 
 /// Whether the slip of `entry` shows in any column that is kept.
 pub fn shows(entry: &Entry, columns: Columns) -> bool {
-    entry.truth.without.as_ref().is_some_and(|without| names(columns).iter().any(|name| cell(entry, name) != cell(without, name)))
+    entry
+        .truth
+        .without
+        .as_ref()
+        .is_some_and(|without| names(columns).iter().any(|name| cell(entry, name, columns) != cell(without, name, columns)))
 }
 
 fn names(columns: Columns) -> Vec<&str> {
@@ -72,7 +78,8 @@ fn names(columns: Columns) -> Vec<&str> {
         "observer",
         "remarks",
     ];
-    ["vessel"].iter().chain(time).chain(rest.iter()).copied().filter(|name| !columns.without.contains(name)).collect()
+    let instruments = if columns.by_hand { &["gyro", "magnetic_compass"][..] } else { &[][..] };
+    ["vessel"].iter().chain(time).chain(instruments).chain(rest.iter()).copied().filter(|name| !columns.without.contains(name)).collect()
 }
 
 /// The log as CSV.
@@ -81,13 +88,18 @@ pub fn csv(log: &Log, columns: Columns) -> String {
     let mut writer = csv::Writer::from_writer(Vec::new());
     writer.write_record(&kept).unwrap();
     for e in &log.entries {
-        let cells: Vec<String> = kept.iter().map(|name| cell(e, name)).collect();
+        let cells: Vec<String> = kept.iter().map(|name| cell(e, name, columns)).collect();
         writer.write_record(&cells).unwrap();
     }
     String::from_utf8(writer.into_inner().unwrap()).unwrap()
 }
 
-fn cell(e: &Entry, name: &str) -> String {
+fn cell(e: &Entry, name: &str, columns: Columns) -> String {
+    if columns.by_hand
+        && let Some(cell) = by_hand(e, name)
+    {
+        return cell;
+    }
     match name {
         "vessel" => e.vessel.clone(),
         "utc" => DateTime::from_timestamp(e.unix_s, 0).unwrap().format("%Y-%m-%dT%H:%M:%SZ").to_string(),
@@ -122,4 +134,18 @@ fn cell(e: &Entry, name: &str) -> String {
         "remarks" => e.remarks.to_owned(),
         _ => String::new(),
     }
+}
+
+/// The cells that a ship writes in another form.
+fn by_hand(e: &Entry, name: &str) -> Option<String> {
+    use shadowpin::angle::text::write;
+    let place = super::voyage::position(e.lat, e.lon);
+    Some(match name {
+        "utc" => DateTime::from_timestamp((e.unix_s + 30).div_euclid(60) * 60, 0)?.format("%Y-%m-%d %H:%M").to_string(),
+        "lat" => write::latitude(place.lat),
+        "lon" => write::longitude(place.lon),
+        "gyro" if e.method != "none" => "No.1".to_owned(),
+        "magnetic_compass" if e.compass_heading.is_some() => "standard".to_owned(),
+        _ => return None,
+    })
 }

@@ -66,13 +66,6 @@ fn measure(house: &House, seed: u64) -> (Table, Vec<(Kind, Vec<&'static str>)>) 
             }
         }
     }
-    if std::env::var("DETAIL").is_ok() {
-        let summary = shadowpin::review::Summary::of(&fleet, &shadowpin::review::Tally::default());
-        for v in &summary.vessels {
-            let kind = ships.iter().find(|s| s.name == v.vessel).unwrap().kind;
-            println!("DETAIL {} {seed} {kind:?} {} {:?} {:?} {:?}", house.name, v.observations, v.patterns, v.gyros, v.not_evaluated);
-        }
-    }
     let named = ships.iter().map(|s| (s.kind, fleet.patterns(&s.name).map(|p| p.id()).collect())).collect();
     (table, named)
 }
@@ -181,7 +174,7 @@ fn ships_time_instead_of_utc() {
         kinds: &GOOD,
         lat_band: ORDINARY,
         style: Style { slips: 0.1, ..Style::default() },
-        columns: Columns { ship_time: true, without: &[] },
+        columns: Columns { ship_time: true, ..Columns::default() },
         mixed: true,
     };
     hold(&house, 50..52, 0.85, 0.95);
@@ -203,7 +196,7 @@ fn columns_missing() {
             kinds: &GOOD,
             lat_band: ORDINARY,
             style: Style { slips: 0.1, ..Style::default() },
-            columns: Columns { ship_time: false, without },
+            columns: Columns { without, ..Columns::default() },
             mixed: true,
         };
         hold(&house, 60..62, 0.7, 0.85);

@@ -1,5 +1,6 @@
 //! The review measured on logs with known truth.
 
+mod cases;
 mod delivered;
 mod made;
 mod measure;

@@ -5,7 +5,7 @@ use shadowpin::angle::{CompassBearing, GyroBearing, Position, Reading, TrueBeari
 use shadowpin::compass::{HorizonKind, Observation, Place, Target, work};
 use shadowpin::horizon::{Limb, RisingOrSetting};
 use shadowpin::limits::Limits;
-use shadowpin::review::{Fleet, Learn, Logged, Names, Row, Verdict, Written, judge};
+use shadowpin::review::{CardFigure, Fleet, Learn, Logged, Names, Row, Verdict, Written, judge};
 use shadowpin::sky::Body;
 use shadowpin::time::{self, Moment, Zone};
 use std::collections::HashMap;
@@ -114,6 +114,10 @@ impl Read {
 
     /// Gives the row, worked, to `each`; with what the fleet knows of the gyro, where it is asked.
     pub fn with<T>(&self, fleet: Option<&Fleet>, limits: &Limits, each: impl FnOnce(&Row) -> T) -> T {
+        self.with_card(fleet, limits, None, each)
+    }
+
+    fn with_card<T>(&self, fleet: Option<&Fleet>, limits: &Limits, card: Option<CardFigure>, each: impl FnOnce(&Row) -> T) -> T {
         let run = fleet.and_then(|f| f.gyro_run(self.names(), self.number));
         let worked = self.observation.map(|o| work(&o, run, limits)).unwrap_or_default();
         each(&Row {
@@ -125,7 +129,7 @@ impl Read {
             observation: self.observation.as_ref(),
             remarks: &self.remarks,
             logged: &self.logged,
-            card: None,
+            card,
             worked: &worked,
         })
     }
@@ -133,11 +137,16 @@ impl Read {
 
 /// Both passes.
 pub fn review(rows: &[Read], limits: &Limits) -> (Fleet, Vec<Verdict>) {
+    review_in(rows, limits, |_| None)
+}
+
+/// Both passes, with what a card says of each row.
+pub fn review_in(rows: &[Read], limits: &Limits, card: impl Fn(&Read) -> Option<CardFigure>) -> (Fleet, Vec<Verdict>) {
     let mut learn = Learn::new(limits.clone());
     for row in rows {
-        row.with(None, limits, |r| learn.feed(r));
+        row.with_card(None, limits, card(row), |r| learn.feed(r));
     }
     let fleet = learn.finish();
-    let verdicts = rows.iter().map(|row| row.with(Some(&fleet), limits, |r| judge(r, &fleet))).collect();
+    let verdicts = rows.iter().map(|row| row.with_card(Some(&fleet), limits, card(row), |r| judge(r, &fleet))).collect();
     (fleet, verdicts)
 }

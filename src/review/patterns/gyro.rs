@@ -13,7 +13,7 @@ const LEAST_ROWS: usize = 12;
 /// Spread of V cos C / (5 pi cos lat) from which its effect can be told, degrees.
 const LEAST_SPEED_SPREAD_DEG: f64 = 0.8;
 /// Spread of tan latitude, and of tan altitude, from which an effect can be told.
-const LEAST_TAN_SPREAD: f64 = 0.4;
+const LEAST_TAN_SPREAD: f64 = 0.5;
 /// Rows at a rising or setting above latitude 15, from which an effect can be told.
 const LEAST_ON_HORIZON: usize = 6;
 
@@ -23,6 +23,9 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
     let mut not = Vec::new();
     for gyro in &vessel.runs {
         let facts: Vec<&Fact> = vessel.facts.iter().filter(|f| gyro.repeaters.contains(&f.gyro) && f.gyro_error_deg().is_some()).collect();
+        if facts.is_empty() && vessel.runs.len() > 1 {
+            continue;
+        }
         let run = gyro.run.as_ref().filter(|r| r.established());
         let found = run.map(|r| named(vessel, gyro, r, limits)).unwrap_or_default();
         for id in [
