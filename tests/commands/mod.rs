@@ -1,6 +1,7 @@
 //! The commands as their user runs them: the real binary, its output, its exit code, its messages.
 
 mod answers;
+mod bad_logs;
 mod delivered_log;
 mod files;
 
@@ -17,7 +18,8 @@ pub struct Ran {
 
 impl From<Output> for Ran {
     fn from(output: Output) -> Self {
-        let text = |bytes: Vec<u8>| String::from_utf8(bytes).unwrap();
+        // A log carries bytes that are not UTF-8 through to the output.
+        let text = |bytes: Vec<u8>| String::from_utf8_lossy(&bytes).into_owned();
         Self { code: output.status.code(), out: text(output.stdout), err: text(output.stderr) }
     }
 }
