@@ -49,7 +49,8 @@ fn azimuths_agree_with_the_truth() {
 /// Two u cover what two standard uncertainties should, and are not padded: in no band of altitude is u twice the scatter.
 #[test]
 fn two_u_cover_the_truth() {
-    let (mut gyro, mut deviation): (Vec<(f64, f64)>, Vec<(f64, f64)>) = (Vec::new(), Vec::new());
+    // Each figure: how far it is off, and its u.
+    let (mut gyro, mut deviation) = (Vec::new(), Vec::new());
     let mut bands: BTreeMap<i32, Vec<(f64, f64)>> = BTreeMap::new();
     for (row, truth) in reviewed() {
         // The vessel whose readings were not read.
@@ -69,7 +70,7 @@ fn two_u_cover_the_truth() {
         }
     }
     for (name, figures) in [("gyro error", &gyro), ("deviation", &deviation)] {
-        let covered = figures.iter().filter(|(off, u)| off.abs() <= 2.0 * u).count() as f64 / figures.len() as f64;
+        let covered = figures.iter().filter(|(off, u): &&(f64, f64)| off.abs() <= 2.0 * u).count() as f64 / figures.len() as f64;
         println!("{name}: {} figures, two u cover {:.1} %", figures.len(), 100.0 * covered);
         assert!(figures.len() > 900 && (0.93..=0.998).contains(&covered), "{name} {covered}");
     }
