@@ -3,6 +3,7 @@
 
 mod commands;
 mod generator;
+mod gyro;
 mod layers;
 mod magnetic;
 mod properties;
