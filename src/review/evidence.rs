@@ -1,14 +1,13 @@
 //! All that a row and its neighbours say, against what a slip would have made of it.
 
-use super::case::{Case, Look};
-use super::checks::{dark_from_deg, sums, sun_altitude_deg, written_u_deg};
+use super::case::{Case, Look, Memo};
+use super::checks::{dark_from_deg, sums, written_u_deg};
 use super::curve::Curve;
 use super::fact::Fact;
 use super::order::miles;
 use super::query::Sum;
-use super::row::Row;
+use super::row::{Row, Written};
 use crate::angle::wrap_180_deg;
-use crate::compass::field;
 use crate::limits::Limits;
 use crate::sky::Body;
 use crate::time::UtcInstant;
@@ -134,30 +133,43 @@ pub fn wrong_by(row: &Row) -> (Option<f64>, Option<f64>, Option<f64>) {
 }
 
 /// What `case` leaves of everything the row says; `None` where it has no azimuth at all.
-pub fn left(row: &Row, case: &Case, context: &Context) -> Option<Left> {
+pub fn left(row: &Row, case: &Case, context: &Context, memo: &Memo) -> Option<Left> {
     let (so, used) = (&case.so, &case.used);
-    let look = so.look();
+    let look = memo.look(so);
     if look.is_none() && so.body().is_some() {
         return None;
     }
-    let used_look = if so == used { look } else { used.look() };
+    let used_look = if so == used { look } else { memo.look(used) };
     let mut left = Left::default();
-    let variation = variation_deg(row, case);
+    let variation = variation_deg(row, case, memo);
     instruments(row, case, context, look, variation, &mut left);
     logged(row, case, context, used_look, variation, &mut left)?;
-    sky(case, context, look, &mut left);
+    sky(case, context, look, memo, &mut left);
     track(case, context, &mut left);
     Some(left)
 }
 
+/// What the subtractions alone leave of the row as it stands: no slip in time, place or body changes that where the azimuth is
+/// written.
+pub fn left_of_sums(row: &Row) -> f64 {
+    if row.logged.azimuth.is_none() {
+        return 0.0;
+    }
+    let figures = [row.logged.gyro_error, row.logged.compass_error, row.logged.deviation];
+    let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Written>)| {
+        sum.zip(figure).map_or(0.0, |((_, by, _), f)| (by / PAPER_U_DEG.hypot(written_u_deg(f))).powi(2))
+    };
+    sums(row).into_iter().zip(figures).map(squares).sum()
+}
+
 /// Variation and its u where the ship was in that case, degrees.
-fn variation_deg(row: &Row, case: &Case) -> Option<(f64, f64)> {
+fn variation_deg(row: &Row, case: &Case, memo: &Memo) -> Option<(f64, f64)> {
     let (position, utc) = (case.so.position?, case.so.utc?);
     let (place, moment) = (row.place?, row.moment?);
     if position == place.position && utc.seconds_since(moment.utc).abs() < 30.0 * 86_400.0 {
         return row.worked.variation.map(|v| (v.value.deg(), v.u_deg()));
     }
-    field::field(position, utc, 0.0).ok().map(|f| (f.variation.deg(), f.variation_u_deg))
+    memo.variation(utc, position)
 }
 
 /// Deviation to expect on a heading, and how far single readings scatter from it, degrees.
@@ -242,7 +254,7 @@ fn deviation_deg_by_bearing(row: &Row, context: &Context, bearing: Option<f64>) 
     Some((value, u.hypot(0.3)))
 }
 
-fn sky(case: &Case, context: &Context, look: Option<Look>, left: &mut Left) {
+fn sky(case: &Case, context: &Context, look: Option<Look>, memo: &Memo, left: &mut Left) {
     let Some(body) = case.so.body() else { return };
     let Some(look) = look else { return };
     if let Some(off) = look.off_horizon {
@@ -252,13 +264,13 @@ fn sky(case: &Case, context: &Context, look: Option<Look>, left: &mut Left) {
         let above = altitude - context.limits.thresholds.too_high_deg;
         left.other((below.max(above).max(0.0)) / HORIZON_U_DEG);
     }
-    dark(body, case, context, left);
+    dark(body, case, context, memo, left);
 }
 
-fn dark(body: Body, case: &Case, context: &Context, left: &mut Left) {
+fn dark(body: Body, case: &Case, context: &Context, memo: &Memo, left: &mut Left) {
     let (Some(utc), Some(position)) = (case.so.utc, case.so.position) else { return };
     let over = match dark_from_deg(body, context.limits) {
-        Some(most) => (sun_altitude_deg(utc, position) - most).max(0.0),
+        Some(most) => (memo.sun_altitude_deg(utc, position) - most).max(0.0),
         None => 0.0,
     };
     left.other(over / 1.5);

@@ -3,7 +3,7 @@
 use super::checks::{row_queries, unrounded};
 use super::explain::{GAIN, explain};
 use super::fact::{Fact, flag};
-use super::fleet::{Fleet, bodies};
+use super::fleet::Fleet;
 use super::order::apart;
 use super::pattern::PatternId;
 use super::query::{Instrument, Query};
@@ -199,14 +199,14 @@ fn slips(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
     if let Some((slip, place)) = vessel.throughout {
         // Its neighbours carry the same slip and say nothing of order and track.
         let alone = super::evidence::Context { before: None, after: None, earlier: &[], ..context };
-        if explain(row, &alone, bodies(), 0.0).iter().any(|e| e.with.is_none() && e.slip == slip && e.place == place) {
+        if explain(row, &alone, 0.0).iter().any(|e| e.with.is_none() && e.slip == slip && e.place == place) {
             verdict.queries.retain(|q| !answerable(q));
             verdict.patterns.insert(0, PatternId::SameSlipThroughout);
             return;
         }
     }
     verdict.searched = true;
-    verdict.slips = explain(row, &context, bodies(), GAIN);
+    verdict.slips = explain(row, &context, GAIN);
 }
 
 /// Errors over their limits; not where the row itself is in doubt, for then the error is not the compass's. What a pattern of the

@@ -2,7 +2,6 @@
 
 use super::super::evidence::{Context, UNKNOWN_GYRO};
 use super::super::explain::explain;
-use super::super::fleet::bodies;
 use super::super::learn::Logbook;
 use super::super::pattern::{Pattern, PatternId};
 use super::super::robust::{median, scale_about_zero};
@@ -47,7 +46,7 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
             speed_kn: kept.row().observation.and_then(|o| o.speed_kn),
             limits,
         };
-        for (rank, e) in explain(&kept.row(), &context, bodies(), 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
+        for (rank, e) in explain(&kept.row(), &context, 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
             match counts.iter_mut().find(|c| c.0 == e.slip && c.1 == e.place) {
                 Some(count) => (count.2, count.3) = (count.2 + 1, count.3 + rank),
                 None => counts.push((e.slip, e.place, 1, rank)),
