@@ -262,20 +262,6 @@ impl Memo {
     pub fn sun_altitude_deg(&self, utc: UtcInstant, position: Position) -> f64 {
         kept(&self.suns, (Some(utc), Some(position), None), || sun_altitude_deg(utc, position))
     }
-
-    /// What the row's own working has computed.
-    pub fn of(row: &Row, sight: &Sight) -> Self {
-        let memo = Self::default();
-        let worked = row.worked;
-        let look = match (sight.target, worked.true_azimuth, worked.at_time) {
-            (Target::Body(_), Some(azimuth), Some(at)) => {
-                Some(Look { azimuth: azimuth.deg(), altitude: Some(at.altitude_deg), off_horizon: None })
-            }
-            _ => return memo,
-        };
-        memo.looks.borrow_mut().push(((sight.utc, sight.position, Some(sight.target)), look));
-        memo
-    }
 }
 
 #[cfg(test)]
@@ -315,6 +301,8 @@ mod tests {
                         // Half a day away either of two is the nearest.
                         if found.utc.seconds_since(utc).abs() < 11.0 * 3600.0 {
                             let bound = if body == Body::Sun { 0.01 } else { 0.05 };
+                            // Where it grazes, due north or south, a little time is much azimuth.
+                            let bound = bound / long.to_radians().sin().abs();
                             assert!(wrap_180_deg(look.azimuth - long).abs() < bound, "{body:?} {lat} {day}: {} {long}", look.azimuth);
                             seen += 1;
                         }

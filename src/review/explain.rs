@@ -1,8 +1,8 @@
 //! The slips that explain a row, best first.
 
 use super::candidates::{Candidate, slips_at_hand, slips_of_the_sky};
-use super::case::{Case, Memo, Sight};
-use super::evidence::{Context, Left, left, left_of_sums};
+use super::case::{Case, Sight};
+use super::evidence::{Context, Ground, Left, left_of_sums};
 use super::row::Row;
 use super::slip::{Explanation, Place, Slip};
 use crate::angle::wrap_180_deg;
@@ -40,8 +40,13 @@ impl Tried {
 /// A good explanation leaves about one for each piece of evidence; six standard deviations of that sum more is still good, since
 /// real readings have their bad days.
 fn serves(raw: f64, count: usize) -> bool {
+    raw <= most_left(count)
+}
+
+/// The most that a good explanation leaves.
+fn most_left(count: usize) -> f64 {
     let n = count as f64;
-    raw <= n + 6.0 * (2.0 * n).sqrt()
+    n + 6.0 * (2.0 * n).sqrt()
 }
 
 /// All slips are alike at first; one that has several forms on this row (ten degrees more or less, on this compass or that; one
@@ -53,29 +58,29 @@ fn price(candidate: &Candidate) -> f64 {
 /// The slips that explain `row` better by `gain` than none does, best first; none where nothing does.
 pub fn explain(row: &Row, context: &Context, gain: f64) -> Vec<Explanation> {
     let Some(sight) = Sight::of(row, context.limits) else { return Vec::new() };
-    let search = Search { row, context, memo: Memo::of(row, &sight), plain: Case::plain(sight) };
+    let search = Search { ground: Ground::new(row, context, sight), plain: Case::plain(sight) };
     // Where the record has no azimuth at all (it never rises there), everything else is better than it.
-    let (none, weight) = match left(row, &search.plain, context, &search.memo) {
+    let (none, weight) = match search.ground.left(&search.plain, f64::INFINITY) {
         Some(Left { sum, weight, .. }) => (sum, weight),
         None => (f64::INFINITY, 100.0),
     };
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
+    let most = most_left(EVIDENCE);
     let mut list = slips_at_hand(row, &sight);
-    let mut tried = search.each(&list);
+    let mut tried = search.each(&list, most);
     // No slip in time, place or body mends a subtraction.
-    let sums_serve = serves(left_of_sums(row), EVIDENCE);
-    if sums_serve {
+    if left_of_sums(row) <= most {
         let more = slips_of_the_sky(row, &sight, context);
-        tried.extend(search.each(&more));
+        tried.extend(search.each(&more, most));
         list.extend(more);
     }
     let good = |t: &&Tried| serves(t.raw, t.count) && t.total() + gain < none;
     if !tried.iter().any(|t| good(&t)) {
-        if !sums_serve {
-            let more = slips_of_the_sky(row, &sight, context);
-            tried.extend(search.each(&more));
-            list.extend(more);
+        // Two together: now whatever a single one leaves counts.
+        if left_of_sums(row) > most {
+            list.extend(slips_of_the_sky(row, &sight, context));
         }
+        tried = search.each(&list, f64::INFINITY);
         tried.sort_by(|a, b| a.total().total_cmp(&b.total()));
         let pair = search.pairs(&tried, &list, none);
         return pair.into_iter().map(|(a, b, total)| explanation(&a, Some(&b), left_deg(total))).collect();
@@ -100,20 +105,19 @@ fn explanation(first: &Candidate, second: Option<&Candidate>, left_deg: f64) -> 
 
 /// One row under search.
 struct Search<'a> {
-    row: &'a Row<'a>,
-    context: &'a Context<'a>,
-    memo: Memo,
+    ground: Ground<'a>,
     plain: Case,
 }
 
 impl Search<'_> {
-    fn each(&self, list: &[Candidate]) -> Vec<Tried> {
-        list.iter().filter_map(|c| self.attempt(&self.plain, c)).collect()
+    /// What each slip leaves, those aside that leave more than `most`.
+    fn each(&self, list: &[Candidate], most: f64) -> Vec<Tried> {
+        list.iter().filter_map(|c| self.attempt(&self.plain, c, most)).collect()
     }
 
-    fn attempt(&self, from: &Case, candidate: &Candidate) -> Option<Tried> {
+    fn attempt(&self, from: &Case, candidate: &Candidate, most: f64) -> Option<Tried> {
         let case = candidate.made(from)?;
-        let Left { sum, count, .. } = left(self.row, &case, self.context, &self.memo)?;
+        let Left { sum, count, .. } = self.ground.left(&case, most)?;
         Some(Tried { candidate: *candidate, case, raw: sum, count, price: price(candidate) })
     }
 
@@ -122,7 +126,7 @@ impl Search<'_> {
         let mut best: Option<(Candidate, Candidate, f64)> = None;
         for first in tried.iter().take(PAIR_FROM) {
             for second in list.iter().filter(|c| c.slip != first.candidate.slip) {
-                let Some(both) = self.attempt(&first.case, second) else { continue };
+                let Some(both) = self.attempt(&first.case, second, most_left(EVIDENCE)) else { continue };
                 let total = both.total() + first.price + PAIR_PRICE;
                 if serves(both.raw, both.count) && total + GAIN < none && best.as_ref().is_none_or(|b| total < b.2) {
                     best = Some((first.candidate, *second, total));
