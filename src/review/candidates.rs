@@ -133,13 +133,11 @@ fn times(row: &Row, list: &mut List) {
     list.add(Slip::HalfDay, &ANYWHERE, &[Change::Later(43_200), Change::Later(-43_200)]);
     list.add(Slip::DayAhead, &ANYWHERE, &[Change::Later(86_400)]);
     list.add(Slip::DayBehind, &ANYWHERE, &[Change::Later(-86_400)]);
-    let nominal = list.sight.position.map(|p| -(p.lon.deg() / 15.0).round() as i64 * 60);
-    let zone_min = row.zone.map(|z| i64::from(z.description_minutes())).or(nominal).filter(|z| *z != 0);
-    if let Some(zone_min) = zone_min {
-        // UTC = ship's time + zone. Applied the wrong way: ship's time - zone, later by twice -zone.
-        list.add(Slip::ZoneSign, &ANYWHERE, &[Change::Later(-2 * zone_min * 60)]);
-        list.add(Slip::ShipTimeAsUtc, &ANYWHERE, &[Change::Later(-zone_min * 60)]);
-    }
+    // UTC = ship's time + zone. Applied the wrong way: ship's time - zone, later by twice -zone.
+    let zones = zones_min(row, list.sight);
+    let by = |hours: i64| zones.iter().filter(|z| **z != 0).map(|z| Change::Later(-hours * z * 60)).collect::<Vec<_>>();
+    list.add(Slip::ZoneSign, &ANYWHERE, &by(2));
+    list.add(Slip::ShipTimeAsUtc, &ANYWHERE, &by(1));
     let years: Vec<Change> = [-1, 1].iter().filter_map(|y| other_year(utc, *y)).map(Change::Time).collect();
     list.add(Slip::Year, &ANYWHERE, &years);
     if let Some(swapped) = day_and_month_exchanged(utc) {
@@ -161,6 +159,22 @@ fn times(row: &Row, list: &mut List) {
             list.found.push(Candidate { slip: Slip::DigitsSwapped, place, forms: 8, change });
         }
     }
+}
+
+/// Zone descriptions that the clocks may have kept, minutes: the one written, else the one of the longitude, and near the edge of
+/// a zone the one beside it.
+fn zones_min(row: &Row, sight: &Sight) -> Vec<i64> {
+    if let Some(zone) = row.zone {
+        return vec![i64::from(zone.description_minutes())];
+    }
+    let Some(position) = sight.position else { return Vec::new() };
+    let exact = -position.lon.deg() / 15.0;
+    let nominal = exact.round();
+    let mut zones = vec![nominal as i64 * 60];
+    if (exact - nominal).abs() > 0.4 {
+        zones.push((nominal + (exact - nominal).signum()) as i64 * 60);
+    }
+    zones
 }
 
 fn other_year(utc: UtcInstant, by: i32) -> Option<UtcInstant> {

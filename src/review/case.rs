@@ -228,15 +228,16 @@ impl Case {
 /// What has been computed already for one row: most slips share a few times and places.
 #[derive(Debug, Default)]
 pub struct Memo {
-    looks: RefCell<Vec<(Key, Option<Look>)>>,
-    fields: RefCell<Vec<(Key, Option<(f64, f64)>)>>,
-    suns: RefCell<Vec<(Key, f64)>>,
+    looks: Known<Option<Look>>,
+    fields: Known<Option<(f64, f64)>>,
+    suns: Known<f64>,
 }
 
 type Key = (Option<UtcInstant>, Option<Position>, Option<Target>);
+type Known<T> = RefCell<Vec<(Key, T)>>;
 
 /// The value kept under `key`, the latest first; otherwise made and kept.
-fn kept<T: Copy>(list: &RefCell<Vec<(Key, T)>>, key: Key, make: impl FnOnce() -> T) -> T {
+fn kept<T: Copy>(list: &Known<T>, key: Key, make: impl FnOnce() -> T) -> T {
     if let Some((_, value)) = list.borrow().iter().rev().find(|(k, _)| *k == key) {
         return *value;
     }

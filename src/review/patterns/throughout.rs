@@ -17,11 +17,6 @@ const LEAST_SHARE: f64 = 0.3;
 /// Share of the affected rows that the one slip must explain.
 const EXPLAINED: f64 = 0.75;
 
-/// Whether the slip makes the recomputed errors unreal, or only the logged ones.
-fn spoils_the_run(place: Place) -> bool {
-    place != Place::Working
-}
-
 /// Names the slip made throughout, if there is one; answers why nothing else can be read from the rows, where that is so.
 pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<String> {
     let affected = book.affected as f64;
@@ -69,7 +64,8 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
         book.observations
     );
     vessel.patterns.push(Pattern { id: PatternId::SameSlipThroughout, detail, since: None });
-    if !spoils_the_run(place) {
+    // In the working, the recomputed errors are real; in the record they are not.
+    if !place.is_in_record() {
         return None;
     }
     level_without_it(vessel, book, slip, place, limits);
