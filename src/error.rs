@@ -8,7 +8,7 @@ use std::path::PathBuf;
 /// Its text is one sentence: the value, what was expected, and a hint where there is one. Where the value stood (file,
 /// line, column) is added by whoever was reading.
 #[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]
-#[error("\"{value}\": expected {expected}{}", hint_tail(.hint))]
+#[error("{}: expected {expected}{}", shown(.value), hint_tail(.hint))]
 pub struct BadValue {
     /// The value as written, cut to a printable length.
     pub value: String,
@@ -57,6 +57,11 @@ pub(crate) fn edits(a: &str, b: &str) -> usize {
         (older, old) = (old, now);
     }
     old.last().copied().unwrap_or(usize::MAX)
+}
+
+/// The value in quotes, or that there is none.
+fn shown(value: &str) -> String {
+    if value.is_empty() { "blank".to_owned() } else { format!("\"{value}\"") }
 }
 
 fn hint_tail(hint: &str) -> String {

@@ -74,6 +74,11 @@ pub enum Notice {
         /// Altitude of the sun, degrees.
         sun_altitude_deg: f64,
     },
+    /// A star or planet by day was worked all the same (`not-dark`, outside a review).
+    NotDark {
+        /// Altitude of the sun, degrees.
+        sun_altitude_deg: f64,
+    },
     /// Above latitude 70 a gyro is doubtful (`gyro-doubtful`).
     GyroDoubtful {
         /// Latitude, degrees, north +.
@@ -182,6 +187,7 @@ impl Notice {
             Self::MayBeOverLimit { .. } => "may-be-over-limit",
             Self::GyroErrorFromRun { .. } => "gyro-error-from-run",
             Self::VenusByDay { .. } => "venus-by-day",
+            Self::NotDark { .. } => "not-dark",
             Self::GyroDoubtful { .. } => "gyro-doubtful",
             Self::BelowHorizon { .. } => "below-horizon",
             Self::ReadingsSetAside { .. } => "readings-set-aside",
@@ -237,6 +243,7 @@ impl fmt::Display for Notice {
             }
             Self::GyroErrorFromRun { age_h } => write!(f, "gyro error taken from its run, last observed {age_h:.1} h before"),
             Self::VenusByDay { sun_altitude_deg } => write!(f, "Venus by day, the sun {sun_altitude_deg:.0} degrees high"),
+            Self::NotDark { sun_altitude_deg } => write!(f, "the sun is {sun_altitude_deg:.0} degrees high: was the body seen at all?"),
             Self::GyroDoubtful { latitude_deg } => write!(f, "latitude {latitude_deg:.0}: gyro doubtful"),
             Self::BelowHorizon { altitude_deg } => write!(f, "the body is below the horizon (altitude {altitude_deg:.1})"),
             Self::ReadingsSetAside { count: 1 } => write!(f, "one reading cannot belong to the curve and was left out"),

@@ -1,6 +1,7 @@
 //! The one test program: outside values, properties, bad logs, commands, layers.
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "a test that fails should stop")]
 
+mod commands;
 mod generator;
 mod layers;
 mod magnetic;

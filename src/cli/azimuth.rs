@@ -7,7 +7,7 @@ use super::one_row;
 use super::output::{Format, OutputArgs};
 use super::when_where::{WhenWhere, option};
 use clap::Args as ClapArgs;
-use shadowpin::compass::{Observation, Target, work};
+use shadowpin::compass::{Observation, Target, doubts, work};
 use shadowpin::error::Result;
 use shadowpin::horizon::by_hand;
 use shadowpin::report::azimuth::AzimuthPage;
@@ -44,7 +44,8 @@ pub fn run(args: Args) -> Result<Exit> {
     let limits = args.instruments.limits()?;
     let mut observation = Observation { moment: Some(moment), place: Some(place), ..Observation::of(Target::Body(body)) };
     args.instruments.fill(&mut observation)?;
-    let worked = work(&observation, None, &limits);
+    let mut worked = work(&observation, None, &limits);
+    worked.notices.extend(doubts(&observation, &worked, &limits));
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
     }

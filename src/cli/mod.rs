@@ -3,6 +3,7 @@
 mod amplitude;
 mod azimuth;
 mod card;
+mod columns;
 mod exit;
 mod files;
 mod instruments;
@@ -38,6 +39,7 @@ enum Command {
     Amplitude(amplitude::Args),
     Plan(plan::Args),
     Review(Box<review::Args>),
+    Columns(columns::Args),
     Limits(limits::Args),
     SelfCheck(self_check::Args),
     /// A deviation curve from the deviations of a swing
@@ -71,6 +73,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Amplitude(args) => amplitude::run(args),
         Command::Plan(args) => plan::run(args),
         Command::Review(args) => review::run(*args),
+        Command::Columns(args) => columns::run(args),
         Command::Limits(args) => limits::run(args),
         Command::SelfCheck(args) => self_check::run(args),
         Command::Swing(args) => swing::run(args),

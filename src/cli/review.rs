@@ -8,7 +8,7 @@ use super::when_where::{DateOrderArg, date_order};
 use clap::{Args as ClapArgs, ValueEnum};
 use shadowpin::angle::text::ErrorSign;
 use shadowpin::compass::card::Cards;
-use shadowpin::error::{Error, Result};
+use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::entry::{Entry, Faults, ReadAs, read_entry};
@@ -181,16 +181,17 @@ impl<'a> Review<'a> {
             return None;
         }
         if row.record.too_long {
-            let bad = shadowpin::error::BadValue::new("", format!("a row of at most {LONGEST_ROW} bytes")).hint("is a quote never closed?");
+            let bad = BadValue::new("longer", format!("a row of at most {LONGEST_ROW} bytes")).hint("is a quote never closed?");
             faults.add_row("row", bad);
             return None;
         }
         let entry = read_entry(row, self.read_as, faults);
-        let extra = row.record.width().saturating_sub(row.header.width);
-        if extra > 0 && (row.header.width..row.record.width()).any(|i| row.record.cell(i).is_some_and(|c| !c.is_empty())) {
-            let bad =
-                shadowpin::error::BadValue::new(&row.record.width().to_string(), format!("{} cells as in the header", row.header.width));
+        let (width, cells) = (row.header.width, row.record.width());
+        if (width..cells).any(|i| row.record.cell(i).is_some_and(|c| !c.is_empty())) {
+            // A delimiter too many: from there on no cell is sure to stand under its column.
+            let bad = BadValue::new(&format!("{cells} cells"), format!("{width}, as in the header"));
             faults.add_row("row", bad.hint("a delimiter within a cell needs quotes; the cells left over stand behind ours"));
+            return None;
         }
         (entry.nothing_had || entry.observation.is_some()).then_some(entry)
     }

@@ -85,7 +85,7 @@ fn text(checks: &[Check], differ: usize) -> String {
             check.what,
             check.published,
             check.computed,
-            difference + 0.0,
+            (difference * 1e4).round() / 1e4 + 0.0,
             check.tolerance
         );
     }

@@ -4,6 +4,7 @@ mod budget;
 pub mod card;
 pub mod curve;
 mod direction;
+mod doubts;
 pub mod field;
 mod observation;
 mod trust;
@@ -11,6 +12,7 @@ mod work;
 
 pub use budget::{Budget, step_u};
 pub use direction::almanac_u_deg;
+pub use doubts::doubts;
 pub use observation::{GyroType, HorizonKind, Observation, Place, Target, Whereabouts};
 pub use trust::{FAIR_U_DEG, FIRM_U_DEG, Trust};
 pub use work::{Figure, GyroRun, OnHorizon, Worked, work};

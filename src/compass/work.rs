@@ -162,6 +162,10 @@ fn trust(worked: &Worked, limits: &Limits) -> Option<Trust> {
         .map(|f| f.u_deg())
         .or(worked.compass_error.map(|f| f.u_deg()))
         .or(worked.compass_error_by_comparison.map(|f| f.u_deg()))?;
+    // A body that cannot be seen gives nothing to trust, however sure the arithmetic.
+    if worked.sighted_altitude_deg.is_some_and(|altitude| altitude < limits.thresholds.below_horizon_deg) {
+        return Some(Trust::Weak);
+    }
     Some(Trust::of(u_deg, worked.sighted_altitude_deg, limits))
 }
 

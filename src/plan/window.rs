@@ -12,6 +12,9 @@ use crate::time::{Moment, UtcInstant};
 /// Nearer to the sun than this the moon is too thin to be sighted, degrees (our own band).
 const THIN_MOON_DEG: f64 = 20.0;
 
+/// A shorter window is not worth going out for, seconds (our own).
+const SHORTEST_S: f64 = 600.0;
+
 /// One end of a window.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct WindowEnd {
@@ -128,6 +131,9 @@ fn in_band(ask: &Ask, body: Body, band: (f64, f64), first_choice: bool) -> Vec<W
 }
 
 fn window(ask: &Ask, body: Body, from: UtcInstant, to: UtcInstant, first_choice: bool) -> Option<Window> {
+    if to.seconds_since(from) < SHORTEST_S {
+        return None;
+    }
     let end = |utc: UtcInstant| {
         let seen = horizontal(&sky::apparent_place(body, utc), ask.track.at(utc)).ok()?;
         Some(WindowEnd { utc, azimuth: seen.azimuth, altitude_deg: seen.altitude_deg })

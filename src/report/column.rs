@@ -3,7 +3,7 @@
 use std::fmt::Write as _;
 
 /// Width of the names.
-const NAME: usize = 24;
+const NAME: usize = 30;
 /// Width of the figures.
 const FIGURE: usize = 12;
 

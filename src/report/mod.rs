@@ -4,6 +4,7 @@ pub mod amplitude;
 pub mod azimuth;
 pub mod card;
 mod column;
+pub mod columns;
 mod figure;
 pub mod fixed;
 pub mod limits;

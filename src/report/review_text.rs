@@ -75,7 +75,7 @@ fn of_vessel(text: &mut String, vessel: &VesselSummary) {
         let which = [gyro.gyro.as_str(), gyro.repeater.as_str()].into_iter().filter(|n| !n.is_empty()).collect::<Vec<_>>().join(", ");
         let which = if which.is_empty() { String::new() } else { format!(" {which}") };
         let scatter = gyro.scatter.map_or_else(String::new, |s| format!(", single errors scatter by {s:.1}"));
-        let _ = writeln!(text, "  gyro{which}: {} (u {u:.1}){scatter}", low_high(mean));
+        let _ = writeln!(text, "  gyro{which}: {} ({}){scatter}", low_high(mean), super::words::u(u));
     }
     for compass in &vessel.compasses {
         let which = if compass.magnetic_compass.is_empty() { "magnetic compass".to_owned() } else { compass.magnetic_compass.clone() };

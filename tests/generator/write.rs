@@ -53,7 +53,7 @@ pub fn shows(entry: &Entry, columns: Columns) -> bool {
         .is_some_and(|without| names(columns).iter().any(|name| cell(entry, name, columns) != cell(without, name, columns)))
 }
 
-fn names(columns: Columns) -> Vec<&str> {
+fn names(columns: Columns<'_>) -> Vec<&str> {
     let time = if columns.ship_time { &["ship_time", "zone"][..] } else { &["utc"][..] };
     let rest = [
         "lat",

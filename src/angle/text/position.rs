@@ -48,7 +48,9 @@ pub fn read_longitude(text: &str) -> Result<Reading<Longitude>, BadValue> {
 /// As [`read_latitude`], and where the cell cannot be parted in two.
 pub fn read_position(text: &str) -> Result<(Reading<Latitude>, Reading<Longitude>), BadValue> {
     let (lat, lon) = part_in_two(text.trim()).ok_or_else(|| BadValue::new(text, POSITION))?;
-    Ok((read_latitude(lat)?, read_longitude(lon)?))
+    // The message shows the whole cell, not the half that failed.
+    let whole = |bad: BadValue| BadValue { value: BadValue::new(text, "").value, ..bad };
+    Ok((read_latitude(lat).map_err(whole)?, read_longitude(lon).map_err(whole)?))
 }
 
 /// Where latitude ends: at a separator, behind its trailing letter, before the longitude's leading letter, at the only blank.

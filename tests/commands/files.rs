@@ -1,0 +1,95 @@
+//! Logs in and out: what is kept, what is refused, what the shell is told.
+
+use super::{fixture, shadowpin};
+
+const HEADER: &str = "utc,lat,lon,body,gyro_bearing,note to self\n";
+
+fn log(rows: &str) -> Vec<u8> {
+    format!("{HEADER}{rows}").into_bytes()
+}
+
+/// A sun bearing that needs no explanation.
+const GOOD: &str = "2026-06-14T06:12:00Z,36-05.8S,130-33.6E,Sun,319.0,\"kept, as \"\"it\"\" is\"\n";
+
+#[test]
+fn cells_are_carried_unchanged_and_rows_keep_their_place() {
+    let rows = format!("{GOOD}2026-06-14T06:12:00Z,95,130-33.6E,Sun,319.5,x\n,,,,,\n{GOOD}");
+    let ran = shadowpin(&["review", "-", "-q"], &log(&rows));
+    assert_eq!(ran.code, Some(3));
+    let lines: Vec<&str> = ran.out.lines().collect();
+    assert_eq!(lines.len(), 5);
+    assert!(lines[0].starts_with(HEADER.trim_end()));
+    assert!(lines[1].starts_with(GOOD.trim_end()));
+    assert!(lines[2].contains("lat: \"\"95\"\": expected a latitude from 90 S to 90 N"), "{}", lines[2]);
+    assert!(lines[3].chars().all(|c| c == ','), "{}", lines[3]);
+    let width =
+        |line: &str| csv::ReaderBuilder::new().has_headers(false).from_reader(line.as_bytes()).records().next().unwrap().unwrap().len();
+    assert!(lines.iter().all(|l| width(l) == 6 + 23));
+}
+
+#[test]
+fn file_and_standard_input_give_the_same_bytes() {
+    let path = fixture("logs/fleet_2025.csv");
+    let from_file = shadowpin(&["review", path.to_str().unwrap(), "-q"], b"");
+    let from_input = shadowpin(&["review", "-", "-q"], &std::fs::read(&path).unwrap());
+    assert_eq!(from_file.code, Some(1));
+    assert!(from_file.out == from_input.out && from_file.out.lines().count() == 2128);
+}
+
+#[test]
+fn the_log_itself_is_never_written() {
+    let folder = tempfile::tempdir().unwrap();
+    let path = folder.path().join("log.csv");
+    std::fs::write(&path, log(GOOD)).unwrap();
+    let name = path.to_str().unwrap();
+    for option in ["-o", "--summary"] {
+        let ran = shadowpin(&["review", name, option, name], b"");
+        assert_eq!(ran.code, Some(2));
+        assert!(ran.err.contains("a log is never overwritten"), "{}", ran.err);
+    }
+    assert_eq!(std::fs::read(&path).unwrap(), log(GOOD));
+}
+
+#[test]
+fn an_earlier_output_is_replaced_only_when_asked() {
+    let once = shadowpin(&["review", "-", "-q"], &log(GOOD)).out;
+    let refused = shadowpin(&["review", "-", "-q"], once.as_bytes());
+    assert_eq!(refused.code, Some(2));
+    assert!(refused.err.contains("--again"), "{}", refused.err);
+    assert_eq!(shadowpin(&["review", "-", "-q", "--again"], once.as_bytes()).out, once);
+}
+
+#[test]
+fn json_lines_have_the_same_names() {
+    let ran = shadowpin(&["review", "-", "-q", "--format", "json"], &log(&format!("{GOOD},,,,,\n")));
+    assert_eq!(ran.code, Some(0));
+    let rows: Vec<serde_json::Value> = ran.out.lines().map(|l| serde_json::from_str(l).unwrap()).collect();
+    assert_eq!(rows[0]["note to self"], "kept, as \"it\" is");
+    assert!(rows[0]["gyro_error"].is_f64() && rows[0]["compass_error"].is_null());
+    assert!(rows[1].as_object().unwrap().values().all(serde_json::Value::is_null));
+    let csv = shadowpin(&["review", "-", "-q"], &log(GOOD)).out;
+    let names: Vec<&str> = csv.lines().next().unwrap().split(',').collect();
+    assert_eq!(rows[0].as_object().unwrap().keys().map(String::as_str).collect::<Vec<_>>(), names);
+}
+
+#[test]
+fn exit_zero_is_for_engines() {
+    let bad = log("2026-06-14T06:12:00Z,95,1,Sun,319.5,\n");
+    assert_eq!(shadowpin(&["review", "-", "-q"], &bad).code, Some(3));
+    assert_eq!(shadowpin(&["review", "-", "-q", "--exit-zero"], &bad).code, Some(0));
+    assert_eq!(shadowpin(&["review", "-", "-q", "--exit-zero"], b"").code, Some(2));
+}
+
+#[test]
+fn a_reader_that_goes_away_is_no_fault() {
+    use std::process::{Command, Stdio};
+    let mut child = Command::new(env!("CARGO_BIN_EXE_shadowpin"))
+        .args(["review", fixture("logs/fleet_2025.csv").to_str().unwrap(), "-q"])
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped())
+        .spawn()
+        .unwrap();
+    drop(child.stdout.take());
+    let output = child.wait_with_output().unwrap();
+    assert_eq!((output.status.code(), output.stderr), (Some(0), Vec::new()));
+}
