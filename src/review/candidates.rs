@@ -1,5 +1,6 @@
 //! Every slip, with what it would change, on one row.
 
+use super::bodies;
 use super::case::{Case, Results, Sight, Turn};
 use super::evidence::Context;
 use super::row::Row;
@@ -93,8 +94,8 @@ struct List<'a> {
 impl List<'_> {
     /// One slip with all its forms, in each of these places.
     fn add(&mut self, slip: Slip, places: &[Place], forms: &[Change]) {
-        for &place in places {
-            self.found.extend(forms.iter().map(|&change| Candidate { slip, place, forms: forms.len(), change }));
+        for &change in forms {
+            self.found.extend(places.iter().map(|&place| Candidate { slip, place, forms: forms.len(), change }));
         }
     }
 }
@@ -103,17 +104,23 @@ const ANYWHERE: [Place; 3] = [Place::Record, Place::Working, Place::RecordFollow
 const RECORD: [Place; 2] = [Place::Record, Place::RecordFollowed];
 const WORKING: [Place; 1] = [Place::Working];
 
-/// Every slip that could be tried on `row`.
-pub fn candidates(row: &Row, sight: &Sight, context: &Context, bodies: &[Body]) -> Vec<Candidate> {
-    let mut list = List { found: Vec::with_capacity(256), sight };
-    times(row, &mut list);
-    positions(context, &mut list);
-    other_bodies(bodies, &mut list);
-    horizons(&mut list);
+/// The slips in readings, in results and in an azimuth once worked: no other time, place or body is looked at.
+pub fn slips_at_hand(row: &Row, sight: &Sight) -> Vec<Candidate> {
+    let mut list = List { found: Vec::with_capacity(128), sight };
     azimuths(&mut list);
     bearings(&mut list);
     headings(&mut list);
     results(row, &mut list);
+    list.found
+}
+
+/// The slips in time, place, body and horizon.
+pub fn slips_of_the_sky(row: &Row, sight: &Sight, context: &Context) -> Vec<Candidate> {
+    let mut list = List { found: Vec::with_capacity(128), sight };
+    times(row, &mut list);
+    positions(context, &mut list);
+    other_bodies(row, context, &mut list);
+    horizons(&mut list);
     list.found
 }
 
@@ -126,13 +133,11 @@ fn times(row: &Row, list: &mut List) {
     list.add(Slip::HalfDay, &ANYWHERE, &[Change::Later(43_200), Change::Later(-43_200)]);
     list.add(Slip::DayAhead, &ANYWHERE, &[Change::Later(86_400)]);
     list.add(Slip::DayBehind, &ANYWHERE, &[Change::Later(-86_400)]);
-    let nominal = list.sight.position.map(|p| -(p.lon.deg() / 15.0).round() as i64 * 60);
-    let zone_min = row.zone.map(|z| i64::from(z.description_minutes())).or(nominal).filter(|z| *z != 0);
-    if let Some(zone_min) = zone_min {
-        // UTC = ship's time + zone. Applied the wrong way: ship's time - zone, later by twice -zone.
-        list.add(Slip::ZoneSign, &ANYWHERE, &[Change::Later(-2 * zone_min * 60)]);
-        list.add(Slip::ShipTimeAsUtc, &ANYWHERE, &[Change::Later(-zone_min * 60)]);
-    }
+    // UTC = ship's time + zone. Applied the wrong way: ship's time - zone, later by twice -zone.
+    let zones = zones_min(row, list.sight);
+    let by = |hours: i64| zones.iter().filter(|z| **z != 0).map(|z| Change::Later(-hours * z * 60)).collect::<Vec<_>>();
+    list.add(Slip::ZoneSign, &ANYWHERE, &by(2));
+    list.add(Slip::ShipTimeAsUtc, &ANYWHERE, &by(1));
     let years: Vec<Change> = [-1, 1].iter().filter_map(|y| other_year(utc, *y)).map(Change::Time).collect();
     list.add(Slip::Year, &ANYWHERE, &years);
     if let Some(swapped) = day_and_month_exchanged(utc) {
@@ -154,6 +159,22 @@ fn times(row: &Row, list: &mut List) {
             list.found.push(Candidate { slip: Slip::DigitsSwapped, place, forms: 8, change });
         }
     }
+}
+
+/// Zone descriptions that the clocks may have kept, minutes: the one written, else the one of the longitude, and near the edge of
+/// a zone the one beside it.
+fn zones_min(row: &Row, sight: &Sight) -> Vec<i64> {
+    if let Some(zone) = row.zone {
+        return vec![i64::from(zone.description_minutes())];
+    }
+    let Some(position) = sight.position else { return Vec::new() };
+    let exact = -position.lon.deg() / 15.0;
+    let nominal = exact.round();
+    let mut zones = vec![nominal as i64 * 60];
+    if (exact - nominal).abs() > 0.4 {
+        zones.push((nominal + (exact - nominal).signum()) as i64 * 60);
+    }
+    zones
 }
 
 fn other_year(utc: UtcInstant, by: i32) -> Option<UtcInstant> {
@@ -200,20 +221,37 @@ fn positions(context: &Context, list: &mut List) {
     }
 }
 
-fn other_bodies(bodies: &[Body], list: &mut List) {
+fn other_bodies(row: &Row, context: &Context, list: &mut List) {
     let Some(body) = list.sight.body() else { return };
     let with = |other: Body| match list.sight.target {
         Target::OnHorizon { event, horizon, .. } => Target::OnHorizon { body: other, event, horizon },
         _ => Target::Body(other),
     };
     // On the horizon only the sun and the moon are taken.
-    let choice = |b: &&Body| **b != body && (!matches!(list.sight.target, Target::OnHorizon { .. }) || matches!(b, Body::Sun | Body::Moon));
-    let others: Vec<Body> = bodies.iter().filter(choice).copied().collect();
-    for &other in &others {
+    if let Target::OnHorizon { .. } = list.sight.target {
+        let others: Vec<Body> = [Body::Sun, Body::Moon].into_iter().filter(|b| *b != body).collect();
+        for &other in &others {
+            list.add(Slip::Body(other), &ANYWHERE, &[Change::Target(with(other))]);
+        }
+        return;
+    }
+    let forms = bodies::count() - 1;
+    for other in bodies::in_direction(list.sight, &directions(row, context)).filter(|b| *b != body) {
         for place in ANYWHERE {
-            list.found.push(Candidate { slip: Slip::Body(other), place, forms: others.len(), change: Change::Target(with(other)) });
+            list.found.push(Candidate { slip: Slip::Body(other), place, forms, change: Change::Target(with(other)) });
         }
     }
+}
+
+/// Where a body that explains the row would have to stand: as logged, as the gyro has it, as the magnetic compass has it; degrees.
+fn directions(row: &Row, context: &Context) -> [Option<f64>; 3] {
+    let observation = row.observation;
+    let variation = row.worked.variation.map_or(0.0, |v| v.value.deg());
+    [
+        row.logged.azimuth.map(|a| a.deg).or_else(|| Some(observation?.gyro_bearing?.value.deg() + row.logged.gyro_error?.deg)),
+        observation.and_then(|o| o.gyro_bearing).map(|b| b.value.deg() + context.gyro.0),
+        observation.and_then(|o| o.compass_bearing).map(|b| b.value.deg() + variation),
+    ]
 }
 
 fn horizons(list: &mut List) {

@@ -1,14 +1,13 @@
 //! All that a row and its neighbours say, against what a slip would have made of it.
 
-use super::case::{Case, Look};
-use super::checks::{dark_from_deg, sums, sun_altitude_deg, written_u_deg};
+use super::case::{Case, Look, Memo, Sight};
+use super::checks::{dark_from_deg, sums, written_u_deg};
 use super::curve::Curve;
 use super::fact::Fact;
 use super::order::miles;
 use super::query::Sum;
-use super::row::Row;
+use super::row::{Row, Written};
 use crate::angle::wrap_180_deg;
-use crate::compass::field;
 use crate::limits::Limits;
 use crate::sky::Body;
 use crate::time::UtcInstant;
@@ -45,6 +44,12 @@ const PAPER_U_DEG: f64 = 0.06;
 const CHART_U_DEG: f64 = 0.15;
 /// A thing that cannot be is taken as this many standard deviations off at most.
 const CANNOT_BE: f64 = 6.0;
+/// Nothing is observed under this altitude, degrees: dip and refraction from a high bridge.
+const LOWEST_DEG: f64 = -0.5;
+/// How sharply daylight hides a star, degrees of the sun's altitude.
+const TWILIGHT_U_DEG: f64 = 1.5;
+/// How far an officer's card may be from the compass's own curve, degrees.
+const CARD_U_DEG: f64 = 0.3;
 /// Altitudes at a rising or setting are judged by eye to this, degrees.
 const HORIZON_U_DEG: f64 = 0.5;
 /// Fixes are good for so many miles.
@@ -105,9 +110,13 @@ pub struct Left {
 impl Left {
     fn angle(&mut self, off_deg: Option<f64>, u_deg: f64, loose_deg: f64) {
         if let Some(off) = off_deg {
-            let u = u_deg.hypot(loose_deg);
-            // A looser fit is paid for, so that it does not win by its looseness.
-            self.sum += (wrap_180_deg(off) / u).powi(2) + 2.0 * (u / u_deg).ln();
+            self.sum += if loose_deg == 0.0 {
+                (wrap_180_deg(off) / u_deg).powi(2)
+            } else {
+                // A looser fit is paid for, so that it does not win by its looseness.
+                let u = u_deg.hypot(loose_deg);
+                (wrap_180_deg(off) / u).powi(2) + 2.0 * (u / u_deg).ln()
+            };
             self.count += 1;
             self.weight += u_deg.powi(-2);
         }
@@ -133,141 +142,237 @@ pub fn wrong_by(row: &Row) -> (Option<f64>, Option<f64>, Option<f64>) {
     by
 }
 
-/// What `case` leaves of everything the row says; `None` where it has no azimuth at all.
-pub fn left(row: &Row, case: &Case, context: &Context) -> Option<Left> {
-    let (so, used) = (&case.so, &case.used);
-    let look = so.look();
-    if look.is_none() && so.body().is_some() {
-        return None;
+/// What the subtractions alone leave of the row as it stands: no slip in time, place or body changes that where the azimuth is
+/// written.
+pub fn left_of_sums(row: &Row) -> f64 {
+    if row.logged.azimuth.is_none() {
+        return 0.0;
     }
-    let used_look = if so == used { look } else { used.look() };
-    let mut left = Left::default();
-    let variation = variation_deg(row, case);
-    instruments(row, case, context, look, variation, &mut left);
-    logged(row, case, context, used_look, variation, &mut left)?;
-    sky(case, context, look, &mut left);
-    track(case, context, &mut left);
-    Some(left)
-}
-
-/// Variation and its u where the ship was in that case, degrees.
-fn variation_deg(row: &Row, case: &Case) -> Option<(f64, f64)> {
-    let (position, utc) = (case.so.position?, case.so.utc?);
-    let (place, moment) = (row.place?, row.moment?);
-    if position == place.position && utc.seconds_since(moment.utc).abs() < 30.0 * 86_400.0 {
-        return row.worked.variation.map(|v| (v.value.deg(), v.u_deg()));
-    }
-    field::field(position, utc, 0.0).ok().map(|f| (f.variation.deg(), f.variation_u_deg))
-}
-
-/// Deviation to expect on a heading, and how far single readings scatter from it, degrees.
-fn deviation_deg(row: &Row, context: &Context, heading: Option<f64>) -> (f64, f64) {
-    if let Some(card) = row.card {
-        return (card.deviation_deg, context.curve.map_or(1.0, |c| c.scatter_deg).hypot(0.5));
-    }
-    let field = row.worked.field.map(|f| (f.horizontal_nt, f.inclination_deg));
-    match (context.curve, heading, field) {
-        (Some(curve), Some(heading), Some(field)) => {
-            let (value, u) = curve.at(heading, field);
-            (value, curve.scatter_deg.hypot(u))
-        }
-        _ => UNKNOWN_DEVIATION,
-    }
-}
-
-fn instruments(row: &Row, case: &Case, context: &Context, look: Option<Look>, variation: Option<(f64, f64)>, left: &mut Left) {
-    let so = &case.so;
-    let azimuth = look.map(|l| l.azimuth);
-    let gyro_u = row.worked.gyro_error.map_or(0.0, |g| g.u_deg()).max(context.gyro.1);
-    left.angle(azimuth.zip(so.gyro).map(|(z, b)| z - b - context.gyro.0), gyro_u, case.loose_deg);
-    let Some((variation, variation_u)) = variation else { return };
-    let (deviation, deviation_u) = deviation_deg(row, context, so.compass_heading);
-    let compass_u = row.worked.deviation.map_or(deviation_u, |d| d.u_deg().max(deviation_u)).hypot(variation_u * 0.5);
-    left.angle(azimuth.zip(so.compass).map(|(z, b)| z - b - variation - deviation), compass_u, case.loose_deg);
-    let headings = so.gyro_heading.zip(so.compass_heading).map(|(g, c)| g + context.gyro.0 - c - variation - deviation);
-    left.angle(headings, deviation_u.hypot(HEADINGS_U_DEG), 0.0);
-}
-
-fn logged(row: &Row, case: &Case, context: &Context, look: Option<Look>, variation: Option<(f64, f64)>, left: &mut Left) -> Option<()> {
-    let (l, used, r) = (row.logged, &case.used, &case.results);
-    let worked = case.worked_azimuth(look);
-    if let Some(azimuth) = l.azimuth {
-        let budget = row.worked.azimuth_budget;
-        let u = TABLES_U_DEG.hypot(budget.time_deg).hypot(budget.position_deg).hypot(written_u_deg(azimuth));
-        // A working that has no azimuth cannot have given the logged one.
-        left.angle(Some(azimuth.deg - worked?), u, case.loose_deg);
-    }
-    let azimuth = l.azimuth.map(|a| a.deg).or(worked);
-    if let Some(error) = l.gyro_error {
-        let parts = azimuth.zip(used.gyro).map(|(z, b)| r.gyro_sign * wrap_180_deg(z - b) + r.gyro_by);
-        left.angle(parts.map(|p| error.deg - p), PAPER_U_DEG.hypot(written_u_deg(error)), 0.0);
-    }
-    let compass_error = azimuth.zip(used.compass).map(|(z, b)| r.compass_sign * wrap_180_deg(z - b) + r.compass_by);
-    if let Some(error) = l.compass_error {
-        let by_headings = l
-            .gyro_error
-            .zip(used.gyro_heading)
-            .zip(used.compass_heading)
-            .map(|((e, g), c)| r.compass_sign * wrap_180_deg(g + e.deg - c) + r.compass_by);
-        let off = |parts: Option<f64>| parts.map(|p| wrap_180_deg(error.deg - p));
-        let off = match (off(compass_error), off(by_headings)) {
-            (Some(a), Some(b)) if b.abs() < a.abs() => Some(b),
-            (a, b) => a.or(b),
-        };
-        left.angle(off, PAPER_U_DEG.hypot(written_u_deg(error)), 0.0);
-    }
-    if let (Some(written), Some((variation, u))) = (l.variation, variation) {
-        let expected = r.variation_sign * (variation + context.variation_off_deg);
-        left.angle(Some(written.deg - expected), CHART_U_DEG.hypot(u).hypot(written_u_deg(written)), 0.0);
-    }
-    if let Some(deviation) = l.deviation {
-        let u = PAPER_U_DEG.hypot(written_u_deg(deviation));
-        let applied = l.variation.map(|v| v.deg).or(variation.map(|v| v.0)).map(|v| r.applied_sign * v);
-        let error = l.compass_error.map(|e| e.deg).or(compass_error);
-        let (parts, u) = if r.card_by_bearing {
-            let (by_bearing, card_u) = deviation_deg_by_bearing(row, context, used.compass)?;
-            (Some(by_bearing), u.hypot(card_u))
-        } else {
-            (error.zip(applied).map(|(e, v)| r.deviation_sign * wrap_180_deg(e - v) + r.deviation_by), u)
-        };
-        left.angle(parts.map(|p| deviation.deg - p), PAPER_U_DEG.hypot(written_u_deg(deviation)), if r.card_by_bearing { u } else { 0.0 });
-    }
-    Some(())
-}
-
-/// What the curve says for the bearing, as if it were a heading, and how far an officer's card may be from it.
-fn deviation_deg_by_bearing(row: &Row, context: &Context, bearing: Option<f64>) -> Option<(f64, f64)> {
-    let field = row.worked.field?;
-    let (value, u) = context.curve?.at(bearing?, (field.horizontal_nt, field.inclination_deg));
-    Some((value, u.hypot(0.3)))
-}
-
-fn sky(case: &Case, context: &Context, look: Option<Look>, left: &mut Left) {
-    let Some(body) = case.so.body() else { return };
-    let Some(look) = look else { return };
-    if let Some(off) = look.off_horizon {
-        left.other(off.abs() / HORIZON_U_DEG);
-    } else if let Some(altitude) = look.altitude {
-        let below = -0.5 - altitude;
-        let above = altitude - context.limits.thresholds.too_high_deg;
-        left.other((below.max(above).max(0.0)) / HORIZON_U_DEG);
-    }
-    dark(body, case, context, left);
-}
-
-fn dark(body: Body, case: &Case, context: &Context, left: &mut Left) {
-    let (Some(utc), Some(position)) = (case.so.utc, case.so.position) else { return };
-    let over = match dark_from_deg(body, context.limits) {
-        Some(most) => (sun_altitude_deg(utc, position) - most).max(0.0),
-        None => 0.0,
+    let figures = [row.logged.gyro_error, row.logged.compass_error, row.logged.deviation];
+    let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Written>)| {
+        sum.zip(figure).map_or(0.0, |((_, by, _), f)| (by / PAPER_U_DEG.hypot(written_u_deg(f))).powi(2))
     };
-    left.other(over / 1.5);
+    sums(row).into_iter().zip(figures).map(squares).sum()
+}
+
+/// A row with all that is the same whatever slip is tried.
+#[derive(Debug)]
+pub struct Ground<'a> {
+    pub row: &'a Row<'a>,
+    pub context: &'a Context<'a>,
+    memo: Memo,
+    plain: Sight,
+    plain_look: Option<Look>,
+    /// Deviation to expect on the heading written, and how far single readings scatter from it, degrees.
+    deviation: (f64, f64),
+    /// What sky, track and time leave of the row as written.
+    around: Left,
+    us: Us,
+}
+
+/// What each figure of the row is good for, degrees.
+#[derive(Debug, Clone, Copy)]
+struct Us {
+    gyro: f64,
+    azimuth: f64,
+    gyro_error: f64,
+    compass_error: f64,
+    deviation: f64,
+    /// Of the logged variation, the model's own u aside.
+    variation: f64,
+}
+
+impl<'a> Ground<'a> {
+    pub fn new(row: &'a Row<'a>, context: &'a Context<'a>, plain: Sight) -> Self {
+        let (l, budget) = (row.logged, row.worked.azimuth_budget);
+        let paper = |figure: Option<Written>| PAPER_U_DEG.hypot(figure.map_or(0.0, written_u_deg));
+        let us = Us {
+            gyro: row.worked.gyro_error.map_or(0.0, |g| g.u_deg()).max(context.gyro.1),
+            azimuth: TABLES_U_DEG.hypot(budget.time_deg).hypot(budget.position_deg).hypot(l.azimuth.map_or(0.0, written_u_deg)),
+            gyro_error: paper(l.gyro_error),
+            compass_error: paper(l.compass_error),
+            deviation: paper(l.deviation),
+            variation: CHART_U_DEG.hypot(l.variation.map_or(0.0, written_u_deg)),
+        };
+        let memo = Memo::default();
+        let plain_look = plain.look();
+        let mut ground = Self { row, context, memo, plain, plain_look, deviation: UNKNOWN_DEVIATION, around: Left::default(), us };
+        ground.deviation = ground.deviation_deg(plain.compass_heading);
+        let mut around = Left::default();
+        ground.around(&plain, plain_look, &mut around);
+        ground.around = around;
+        ground
+    }
+
+    /// What `case` leaves of everything the row says; `None` where it has no azimuth at all, or leaves more than `most` for certain.
+    pub fn left(&self, case: &Case, most: f64) -> Option<Left> {
+        let mut left = Left::default();
+        let variation = self.variation_deg(case);
+        // What needs no look at the sky comes first.
+        if self.row.logged.azimuth.is_some() {
+            self.sums(case, self.row.logged.azimuth.map(|a| a.deg), variation, &mut left)?;
+        }
+        self.logged_variation(case, variation, &mut left);
+        if left.sum > most {
+            return None;
+        }
+        let (so, used) = (&case.so, &case.used);
+        let look = self.look(so);
+        if look.is_none() && so.body().is_some() {
+            return None;
+        }
+        let used_look = if so == used { look } else { self.look(used) };
+        self.azimuth(case, used_look, variation, &mut left)?;
+        self.instruments(case, look, variation, &mut left);
+        if left.sum > most {
+            return None;
+        }
+        if so.utc == self.plain.utc && so.position == self.plain.position && so.target == self.plain.target {
+            left.sum += self.around.sum;
+            left.count += self.around.count;
+        } else {
+            self.around(so, look, &mut left);
+        }
+        Some(left)
+    }
+
+    fn look(&self, sight: &Sight) -> Option<Look> {
+        if sight.utc == self.plain.utc && sight.position == self.plain.position && sight.target == self.plain.target {
+            self.plain_look
+        } else {
+            self.memo.look(sight)
+        }
+    }
+
+    /// Variation and its u where the ship was in that case, degrees.
+    fn variation_deg(&self, case: &Case) -> Option<(f64, f64)> {
+        let (position, utc) = (case.so.position?, case.so.utc?);
+        let (place, moment) = (self.row.place?, self.row.moment?);
+        // A month changes it by nothing.
+        if position == place.position && utc.seconds_since(moment.utc).abs() < 30.0 * 86_400.0 {
+            return self.row.worked.variation.map(|v| (v.value.deg(), v.u_deg()));
+        }
+        self.memo.variation(utc, position)
+    }
+
+    /// Deviation to expect on a heading, and how far single readings scatter from it, degrees.
+    fn deviation_deg(&self, heading: Option<f64>) -> (f64, f64) {
+        if let Some(card) = self.row.card {
+            return (card.deviation_deg, self.context.curve.map_or(1.0, |c| c.scatter_deg).hypot(0.5));
+        }
+        let field = self.row.worked.field.map(|f| (f.horizontal_nt, f.inclination_deg));
+        match (self.context.curve, heading, field) {
+            (Some(curve), Some(heading), Some(field)) => {
+                let (value, u) = curve.at(heading, field);
+                (value, curve.scatter_deg.hypot(u))
+            }
+            _ => UNKNOWN_DEVIATION,
+        }
+    }
+
+    /// Each instrument against what is known of it.
+    fn instruments(&self, case: &Case, look: Option<Look>, variation: Option<(f64, f64)>, left: &mut Left) {
+        let (so, context) = (&case.so, self.context);
+        let azimuth = look.map(|l| l.azimuth);
+        left.angle(azimuth.zip(so.gyro).map(|(z, b)| z - b - context.gyro.0), self.us.gyro, case.loose_deg);
+        let Some((variation, variation_u)) = variation else { return };
+        let same_heading = so.compass_heading == self.plain.compass_heading;
+        let (deviation, deviation_u) = if same_heading { self.deviation } else { self.deviation_deg(so.compass_heading) };
+        let compass_u = self.row.worked.deviation.map_or(deviation_u, |d| d.u_deg().max(deviation_u)).hypot(variation_u * 0.5);
+        left.angle(azimuth.zip(so.compass).map(|(z, b)| z - b - variation - deviation), compass_u, case.loose_deg);
+        let headings = so.gyro_heading.zip(so.compass_heading).map(|(g, c)| g + context.gyro.0 - c - variation - deviation);
+        left.angle(headings, deviation_u.hypot(HEADINGS_U_DEG), 0.0);
+    }
+
+    /// The logged azimuth; and the subtractions, where they need the one that would have been worked.
+    fn azimuth(&self, case: &Case, look: Option<Look>, variation: Option<(f64, f64)>, left: &mut Left) -> Option<()> {
+        let worked = case.worked_azimuth(look);
+        match self.row.logged.azimuth {
+            // A working that has no azimuth cannot have given the logged one.
+            Some(azimuth) => left.angle(Some(azimuth.deg - worked?), self.us.azimuth, case.loose_deg),
+            None => self.sums(case, worked, variation, left)?,
+        }
+        Some(())
+    }
+
+    /// Each logged error against its parts.
+    fn sums(&self, case: &Case, azimuth: Option<f64>, variation: Option<(f64, f64)>, left: &mut Left) -> Option<()> {
+        let (l, used, r) = (self.row.logged, &case.used, &case.results);
+        if let Some(error) = l.gyro_error {
+            let parts = azimuth.zip(used.gyro).map(|(z, b)| r.gyro_sign * wrap_180_deg(z - b) + r.gyro_by);
+            left.angle(parts.map(|p| error.deg - p), self.us.gyro_error, 0.0);
+        }
+        let compass_error = azimuth.zip(used.compass).map(|(z, b)| r.compass_sign * wrap_180_deg(z - b) + r.compass_by);
+        if let Some(error) = l.compass_error {
+            let by_headings = l
+                .gyro_error
+                .zip(used.gyro_heading)
+                .zip(used.compass_heading)
+                .map(|((e, g), c)| r.compass_sign * wrap_180_deg(g + e.deg - c) + r.compass_by);
+            let off = |parts: Option<f64>| parts.map(|p| wrap_180_deg(error.deg - p));
+            let off = match (off(compass_error), off(by_headings)) {
+                (Some(a), Some(b)) if b.abs() < a.abs() => Some(b),
+                (a, b) => a.or(b),
+            };
+            left.angle(off, self.us.compass_error, 0.0);
+        }
+        if let Some(deviation) = l.deviation {
+            let applied = l.variation.map(|v| v.deg).or(variation.map(|v| v.0)).map(|v| r.applied_sign * v);
+            let error = l.compass_error.map(|e| e.deg).or(compass_error);
+            let (parts, loose_deg) = if r.card_by_bearing {
+                let (by_bearing, card_u) = self.deviation_deg_by_bearing(used.compass)?;
+                (Some(by_bearing), card_u)
+            } else {
+                (error.zip(applied).map(|(e, v)| r.deviation_sign * wrap_180_deg(e - v) + r.deviation_by), 0.0)
+            };
+            left.angle(parts.map(|p| deviation.deg - p), self.us.deviation, loose_deg);
+        }
+        Some(())
+    }
+
+    fn logged_variation(&self, case: &Case, variation: Option<(f64, f64)>, left: &mut Left) {
+        if let (Some(written), Some((variation, u))) = (self.row.logged.variation, variation) {
+            let expected = case.results.variation_sign * (variation + self.context.variation_off_deg);
+            left.angle(Some(written.deg - expected), self.us.variation.hypot(u), 0.0);
+        }
+    }
+
+    /// What the curve says for the bearing, as if it were a heading, and how far an officer's card may be from it.
+    fn deviation_deg_by_bearing(&self, bearing: Option<f64>) -> Option<(f64, f64)> {
+        let field = self.row.worked.field?;
+        let (value, u) = self.context.curve?.at(bearing?, (field.horizontal_nt, field.inclination_deg));
+        Some((value, u.hypot(CARD_U_DEG)))
+    }
+
+    /// The body against horizon and daylight, the position against the track, the time against its neighbours.
+    fn around(&self, so: &Sight, look: Option<Look>, left: &mut Left) {
+        if let (Some(body), Some(look)) = (so.body(), look) {
+            if let Some(off) = look.off_horizon {
+                left.other(off.abs() / HORIZON_U_DEG);
+            } else if let Some(altitude) = look.altitude {
+                let below = LOWEST_DEG - altitude;
+                let above = altitude - self.context.limits.thresholds.too_high_deg;
+                left.other((below.max(above).max(0.0)) / HORIZON_U_DEG);
+            }
+            self.dark(body, so, left);
+        }
+        track(so, self.context, left);
+    }
+
+    fn dark(&self, body: Body, so: &Sight, left: &mut Left) {
+        let (Some(utc), Some(position)) = (so.utc, so.position) else { return };
+        let over = match dark_from_deg(body, self.context.limits) {
+            Some(most) => (self.memo.sun_altitude_deg(utc, position) - most).max(0.0),
+            None => 0.0,
+        };
+        left.other(over / TWILIGHT_U_DEG);
+    }
 }
 
 /// The position against the track of both neighbours, and the time against theirs.
-fn track(case: &Case, context: &Context, left: &mut Left) {
-    let Some(utc) = case.so.utc else { return };
-    if let (Some(position), Some((there, miles_u))) = (case.so.position, context.on_track(Some(utc))) {
+fn track(so: &Sight, context: &Context, left: &mut Left) {
+    let Some(utc) = so.utc else { return };
+    if let (Some(position), Some((there, miles_u))) = (so.position, context.on_track(Some(utc))) {
         let here = (position.lat.deg(), position.lon.deg());
         left.other(miles(there, here) / miles_u);
         left.other(context.out_of_reach(utc, here).unwrap_or(0.0).max(0.0));

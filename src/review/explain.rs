@@ -1,13 +1,12 @@
 //! The slips that explain a row, best first.
 
-use super::candidates::{Candidate, candidates};
+use super::candidates::{Candidate, slips_at_hand, slips_of_the_sky};
 use super::case::{Case, Sight};
-use super::evidence::{Context, Left, left};
+use super::evidence::{Context, Ground, Left, left_of_sums};
 use super::row::Row;
 use super::slip::{Explanation, Place, Slip};
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
-use crate::sky::Body;
 
 /// Explanations that are listed at most.
 const MOST: usize = 6;
@@ -19,6 +18,9 @@ pub const GAIN: f64 = 9.0;
 const PAIR_FROM: usize = 10;
 /// What a pair pays for being two of many.
 const PAIR_PRICE: f64 = 12.0;
+
+/// More pieces of evidence than any row has.
+const EVIDENCE: usize = 16;
 
 /// A hypothesis with what it leaves.
 struct Tried {
@@ -38,8 +40,13 @@ impl Tried {
 /// A good explanation leaves about one for each piece of evidence; six standard deviations of that sum more is still good, since
 /// real readings have their bad days.
 fn serves(raw: f64, count: usize) -> bool {
+    raw <= most_left(count)
+}
+
+/// The most that a good explanation leaves.
+fn most_left(count: usize) -> f64 {
     let n = count as f64;
-    raw <= n + 6.0 * (2.0 * n).sqrt()
+    n + 6.0 * (2.0 * n).sqrt()
 }
 
 /// All slips are alike at first; one that has several forms on this row (ten degrees more or less, on this compass or that; one
@@ -49,56 +56,85 @@ fn price(candidate: &Candidate) -> f64 {
 }
 
 /// The slips that explain `row` better by `gain` than none does, best first; none where nothing does.
-pub fn explain(row: &Row, context: &Context, bodies: &[Body], gain: f64) -> Vec<Explanation> {
+pub fn explain(row: &Row, context: &Context, gain: f64) -> Vec<Explanation> {
     let Some(sight) = Sight::of(row, context.limits) else { return Vec::new() };
-    let plain = Case::plain(sight);
+    let search = Search { ground: Ground::new(row, context, sight), plain: Case::plain(sight) };
     // Where the record has no azimuth at all (it never rises there), everything else is better than it.
-    let (none, weight) = match left(row, &plain, context) {
+    let (none, weight) = match search.ground.left(&search.plain, f64::INFINITY) {
         Some(Left { sum, weight, .. }) => (sum, weight),
         None => (f64::INFINITY, 100.0),
     };
-    let list = candidates(row, &sight, context, bodies);
-    let mut tried: Vec<Tried> = list.iter().filter_map(|c| attempt(row, &plain, c, context)).collect();
-    tried.sort_by(|a, b| a.total().total_cmp(&b.total()));
-    let singles: Vec<&Tried> = tried.iter().filter(|t| serves(t.raw, t.count) && t.total() + gain < none).collect();
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
+    let most = most_left(EVIDENCE);
+    let mut list = slips_at_hand(row, &sight);
+    let mut tried = search.each(&list, most);
+    // No slip in time, place or body mends a subtraction.
+    if left_of_sums(row) <= most {
+        let more = slips_of_the_sky(row, &sight, context);
+        tried.extend(search.each(&more, most));
+        list.extend(more);
+    }
+    let good = |t: &&Tried| serves(t.raw, t.count) && t.total() + gain < none;
+    if !tried.iter().any(|t| good(&t)) {
+        // Two together: now whatever a single one leaves counts.
+        if left_of_sums(row) > most {
+            list.extend(slips_of_the_sky(row, &sight, context));
+        }
+        tried = search.each(&list, f64::INFINITY);
+        tried.sort_by(|a, b| a.total().total_cmp(&b.total()));
+        let pair = search.pairs(&tried, &list, none);
+        return pair.into_iter().map(|(a, b, total)| explanation(&a, Some(&b), left_deg(total))).collect();
+    }
+    tried.sort_by(|a, b| a.total().total_cmp(&b.total()));
     let mut found: Vec<Explanation> = Vec::new();
-    let Some(best) = singles.first().map(|t| t.total()) else {
-        return pairs(row, &tried, &list, context, none)
-            .map(|(a, b, total)| Explanation { slip: a.slip, place: a.place, with: Some((b.slip, b.place)), left_deg: left_deg(total) })
-            .into_iter()
-            .collect();
-    };
-    for t in singles {
-        if t.total() > best + DROP || found.len() == MOST {
+    let mut best = None;
+    for t in tried.iter().filter(good) {
+        if t.total() > *best.get_or_insert(t.total()) + DROP || found.len() == MOST {
             break;
         }
         if found.iter().all(|f| f.slip != t.candidate.slip) {
-            found.push(Explanation { slip: t.candidate.slip, place: t.candidate.place, with: None, left_deg: left_deg(t.total()) });
+            found.push(explanation(&t.candidate, None, left_deg(t.total())));
         }
     }
     found
 }
 
-fn attempt(row: &Row, from: &Case, candidate: &Candidate, context: &Context) -> Option<Tried> {
-    let case = candidate.made(from)?;
-    let Left { sum, count, .. } = left(row, &case, context)?;
-    Some(Tried { candidate: *candidate, case, raw: sum, count, price: price(candidate) })
+fn explanation(first: &Candidate, second: Option<&Candidate>, left_deg: f64) -> Explanation {
+    Explanation { slip: first.slip, place: first.place, with: second.map(|s| (s.slip, s.place)), left_deg }
 }
 
-/// The best two together.
-fn pairs(row: &Row, tried: &[Tried], list: &[Candidate], context: &Context, none: f64) -> Option<(Candidate, Candidate, f64)> {
-    let mut best: Option<(Candidate, Candidate, f64)> = None;
-    for first in tried.iter().take(PAIR_FROM) {
-        for second in list.iter().filter(|c| c.slip != first.candidate.slip) {
-            let Some(both) = attempt(row, &first.case, second, context) else { continue };
-            let total = both.total() + first.price + PAIR_PRICE;
-            if serves(both.raw, both.count) && total + GAIN < none && best.as_ref().is_none_or(|b| total < b.2) {
-                best = Some((first.candidate, *second, total));
+/// One row under search.
+struct Search<'a> {
+    ground: Ground<'a>,
+    plain: Case,
+}
+
+impl Search<'_> {
+    /// What each slip leaves, those aside that leave more than `most`.
+    fn each(&self, list: &[Candidate], most: f64) -> Vec<Tried> {
+        list.iter().filter_map(|c| self.attempt(&self.plain, c, most)).collect()
+    }
+
+    fn attempt(&self, from: &Case, candidate: &Candidate, most: f64) -> Option<Tried> {
+        let case = candidate.made(from)?;
+        let Left { sum, count, .. } = self.ground.left(&case, most)?;
+        Some(Tried { candidate: *candidate, case, raw: sum, count, price: price(candidate) })
+    }
+
+    /// The best two together; `tried` is sorted.
+    fn pairs(&self, tried: &[Tried], list: &[Candidate], none: f64) -> Option<(Candidate, Candidate, f64)> {
+        let mut best: Option<(Candidate, Candidate, f64)> = None;
+        for first in tried.iter().take(PAIR_FROM) {
+            for second in list.iter().filter(|c| c.slip != first.candidate.slip) {
+                let Some(both) = self.attempt(&first.case, second, most_left(EVIDENCE)) else { continue };
+                let total = both.total() + first.price + PAIR_PRICE;
+                if serves(both.raw, both.count) && total + GAIN < none && best.as_ref().is_none_or(|b| total < b.2) {
+                    best = Some((first.candidate, *second, total));
+                }
             }
         }
+        best
     }
-    best
 }
 
 /// The gyro error of `row` with that slip undone, degrees.
@@ -106,7 +142,9 @@ pub fn gyro_error_without(row: &Row, slip: Slip, place: Place, limits: &Limits) 
     let sight = Sight::of(row, limits)?;
     let context =
         Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], speed_kn: None, limits };
-    let candidate = candidates(row, &sight, &context, &[]).into_iter().find(|c| c.slip == slip && c.place == place)?;
+    let mut list = slips_at_hand(row, &sight);
+    list.extend(slips_of_the_sky(row, &sight, &context));
+    let candidate = list.into_iter().find(|c| c.slip == slip && c.place == place)?;
     let so = candidate.made(&Case::plain(sight))?.so;
     Some(wrap_180_deg(so.look()?.azimuth - so.gyro?))
 }

@@ -6,9 +6,7 @@ use super::vessel::Vessel;
 use crate::angle::GyroError;
 use crate::compass::GyroRun;
 use crate::limits::Limits;
-use crate::sky::Body;
 use std::collections::HashMap;
-use std::sync::OnceLock;
 
 /// All vessels of a log.
 #[derive(Debug, Clone)]
@@ -16,12 +14,6 @@ pub struct Fleet {
     vessels: Vec<Vessel>,
     by_name: HashMap<String, usize>,
     pub(super) limits: Limits,
-}
-
-/// The bodies that could have been meant.
-pub(super) fn bodies() -> &'static [Body] {
-    static BODIES: OnceLock<Vec<Body>> = OnceLock::new();
-    BODIES.get_or_init(|| Body::all().collect())
 }
 
 impl Fleet {

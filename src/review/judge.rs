@@ -3,12 +3,13 @@
 use super::checks::{row_queries, unrounded};
 use super::explain::{GAIN, explain};
 use super::fact::{Fact, flag};
-use super::fleet::{Fleet, bodies};
+use super::fleet::Fleet;
 use super::order::apart;
 use super::pattern::PatternId;
 use super::query::{Instrument, Query};
 use super::row::Row;
-use super::slip::{Explanation, Place};
+use super::run::Term;
+use super::slip::Explanation;
 use super::vessel::Vessel;
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
@@ -85,6 +86,15 @@ fn order(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
         && let Some((_, of_row)) = vessel.repeats.get(i)
     {
         verdict.queries.push(Query::Repeat { of_row: *of_row });
+    }
+    // Where every time is off by the zone, a change of zone looks like a jump, and the sun is elsewhere: the pattern is said instead.
+    if vessel.throughout.is_some_and(|(slip, place)| slip.is_in_time() && place.is_in_record()) {
+        let before = verdict.queries.len();
+        verdict.queries.retain(|q| !matches!(q, Query::ReasonDoubtful { .. }));
+        if fact.has(flag::OUT_OF_ORDER) || fact.has(flag::TOO_FAR) || verdict.queries.len() < before {
+            verdict.patterns.push(PatternId::SameSlipThroughout);
+        }
+        return;
     }
     let before = vessel.facts.get(..at).unwrap_or_default();
     let after = vessel.facts.get(at + 1..).unwrap_or_default();
@@ -199,20 +209,22 @@ fn slips(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
     if let Some((slip, place)) = vessel.throughout {
         // Its neighbours carry the same slip and say nothing of order and track.
         let alone = super::evidence::Context { before: None, after: None, earlier: &[], ..context };
-        if explain(row, &alone, bodies(), 0.0).iter().any(|e| e.with.is_none() && e.slip == slip && e.place == place) {
+        if explain(row, &alone, 0.0).iter().any(|e| e.with.is_none() && e.slip == slip && e.place.is_in_record() == place.is_in_record()) {
             verdict.queries.retain(|q| !answerable(q));
-            verdict.patterns.insert(0, PatternId::SameSlipThroughout);
+            if !verdict.patterns.contains(&PatternId::SameSlipThroughout) {
+                verdict.patterns.insert(0, PatternId::SameSlipThroughout);
+            }
             return;
         }
     }
     verdict.searched = true;
-    verdict.slips = explain(row, &context, bodies(), GAIN);
+    verdict.slips = explain(row, &context, GAIN);
 }
 
 /// Errors over their limits; not where the row itself is in doubt, for then the error is not the compass's. What a pattern of the
 /// vessel explains is said there.
 fn limits_of_errors(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, verdict: &mut Verdict) {
-    if verdict.searched || row.observation.is_none() || vessel.throughout.is_some_and(|(_, place)| place != Place::Working) {
+    if verdict.searched || row.observation.is_none() || vessel.throughout.is_some_and(|(_, place)| place.is_in_record()) {
         return;
     }
     let t = &limits.thresholds;
@@ -243,7 +255,14 @@ fn limits_of_errors(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, ve
 /// The pattern of the gyro's run without whose part (degrees) `fits` holds.
 fn explained(vessel: &Vessel, fact: &Fact, fits: impl Fn(f64) -> bool) -> Option<PatternId> {
     let run = vessel.gyro_of(fact.gyro)?.run.as_ref()?;
-    let parts = || run.terms.iter().enumerate().filter_map(|(term, what)| Some((what.pattern()?, run.part_deg(term, fact))));
+    let parts = || {
+        run.terms.iter().enumerate().filter_map(|(term, what)| {
+            let part = run.part_deg(term, fact);
+            // Of two repeaters that differ either may be the one that is out.
+            let of_the_other = matches!(what, Term::Repeater(_)) && part == 0.0;
+            Some((what.pattern()?, if of_the_other { -run.coefficient(term).0 } else { part }))
+        })
+    };
     let named = |id: PatternId| vessel.patterns.iter().any(|p| p.id == id);
     if let Some((id, _)) = parts().find(|(id, part)| named(*id) && fits(*part)) {
         return Some(id);

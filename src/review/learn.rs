@@ -18,6 +18,8 @@ const RECENT: usize = 64;
 const SAMPLE: usize = 32;
 /// Figures of a vessel's logged variation, and of its deviation against a card, that are kept.
 const FIGURES: usize = 512;
+/// Rows that room is made for at the least.
+const LEAST_ROOM: usize = 64;
 /// A gyro error over this is an affected row before any run is known, degrees.
 const WILD_DEG: f64 = 6.0;
 
@@ -187,6 +189,10 @@ impl Logbook {
         } else {
             (0, 0)
         };
+        if self.facts.len() == self.facts.capacity() {
+            // By an eighth, not by doubling: of ten million rows hardly more than they need is held.
+            self.facts.reserve_exact((self.facts.len() / 8).max(LEAST_ROOM));
+        }
         self.facts.push(Fact::of(row, gyro, compass, affected));
         self.copy_of_an_earlier(row);
         let Some(observation) = row.observation else { return };

@@ -12,6 +12,7 @@
 //!
 //! Nothing in a log is ever corrected. A query is a question.
 
+mod bodies;
 mod candidates;
 mod case;
 mod checks;

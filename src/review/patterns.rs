@@ -53,7 +53,7 @@ fn settle(vessel: &mut Vessel, id: PatternId, judge: impl FnOnce(&Vessel) -> Ans
 }
 
 /// Share of observations from which errors worked from finer readings are a habit.
-const HABIT: f64 = 0.2;
+const HABIT: f64 = 0.1;
 
 /// Errors worked from readings finer than those written: said once, with the regularity that it goes with where that is found.
 fn unrounded(vessel: &mut Vessel, book: &Logbook) {

@@ -51,10 +51,13 @@ impl Fit {
 
     /// Standard uncertainty of the fitted value for the columns `x`.
     pub fn value_u(&self, x: &[f64]) -> f64 {
-        let n = self.coefficients.len();
-        let sum: f64 =
-            self.covariance.chunks(n.max(1)).zip(x).map(|(row, xi)| xi * row.iter().zip(x).map(|(c, xj)| c * xj).sum::<f64>()).sum();
-        sum.max(0.0).sqrt()
+        self.quadratic(x.iter().copied(), || x.iter().copied()).max(0.0).sqrt()
+    }
+
+    /// x' C x with the covariance C.
+    pub fn quadratic<I: Iterator<Item = f64>>(&self, x: impl Iterator<Item = f64>, again: impl Fn() -> I) -> f64 {
+        let n = self.coefficients.len().max(1);
+        self.covariance.chunks(n).zip(x).map(|(row, xi)| xi * row.iter().zip(again()).map(|(c, xj)| c * xj).sum::<f64>()).sum()
     }
 
     /// Standard uncertainty of one coefficient.

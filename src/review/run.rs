@@ -155,10 +155,6 @@ impl Run {
         self.scatter_deg < MOST_SCATTER_DEG
     }
 
-    fn columns(&self, fact: &Fact) -> Vec<f64> {
-        self.terms.iter().map(|t| t.value(fact)).collect()
-    }
-
     /// The error to expect on a row, degrees, slow drift aside.
     pub fn value_deg(&self, fact: &Fact) -> f64 {
         self.terms.iter().zip(&self.fit.coefficients).map(|(t, c)| c * t.value(fact)).sum()
@@ -166,7 +162,8 @@ impl Run {
 
     /// Standard uncertainty of that, degrees.
     pub fn value_u_deg(&self, fact: &Fact) -> f64 {
-        self.fit.value_u(&self.columns(fact))
+        let values = || self.terms.iter().map(|t| t.value(fact));
+        self.fit.quadratic(values(), values).max(0.0).sqrt()
     }
 
     /// What one term adds on a row, from the middle of its values, degrees.

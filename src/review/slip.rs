@@ -102,6 +102,23 @@ impl Slip {
         }
     }
 
+    /// Whether it moves the time.
+    pub fn is_in_time(self) -> bool {
+        matches!(
+            self,
+            Self::HourAhead
+                | Self::HourBehind
+                | Self::ClockChange
+                | Self::HalfDay
+                | Self::ZoneSign
+                | Self::ShipTimeAsUtc
+                | Self::DayAhead
+                | Self::DayBehind
+                | Self::Year
+                | Self::DateSwapped
+        )
+    }
+
     /// What it would mean, in a few words that follow "could".
     pub fn words(self) -> &'static str {
         match self {
@@ -159,6 +176,11 @@ pub enum Place {
 }
 
 impl Place {
+    /// Whether what is written is wrong.
+    pub fn is_in_record(self) -> bool {
+        self != Self::Working
+    }
+
     /// In words that follow "looks to be".
     pub fn words(self) -> &'static str {
         match self {

@@ -213,6 +213,7 @@ pub fn voyage(ship: &Ship, style: Style) -> Vec<Entry> {
                 entry.method = "none";
                 entry.remarks = if !overcast && up { "sun too high" } else { rng.pick(&["overcast", "rain", "fog"]) };
             }
+            house(ship, &mut entry);
             entries.push(entry);
             continue;
         };

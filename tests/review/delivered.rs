@@ -29,18 +29,6 @@ fn slips_patterns_and_quiet_on_the_delivered_log() {
             pattern: kind(&row.vessel) != "good",
         };
         table.add(&known, verdict);
-        if std::env::var("SHOW").is_ok() && (known.slip.is_some() || !verdict.queries.is_empty()) {
-            println!(
-                "{} {} {:?} {} {:.1} | {} | {}",
-                row.number,
-                row.vessel,
-                known.slip,
-                known.place,
-                known.shift_deg,
-                verdict.queries.iter().map(|q| q.id()).collect::<Vec<_>>().join(";"),
-                verdict.slips.iter().map(|s| format!("{s}{:?}", s.place)).collect::<Vec<_>>().join(";")
-            );
-        }
     }
     println!("{table}");
     for vessel in vessels.as_array().unwrap() {

@@ -32,6 +32,9 @@ pub struct Table {
     /// Rows without a slip on vessels without a pattern, and those of them with a query.
     pub clean: usize,
     pub cried_wolf: usize,
+    /// The same on vessels with a pattern: there the pattern is said once, the rows not one by one.
+    pub patterned: usize,
+    pub one_by_one: usize,
     /// Of the queries on clean rows.
     pub wolves: BTreeMap<&'static str, usize>,
 }
@@ -54,7 +57,10 @@ fn is(explained: &str, slip: &str) -> bool {
 impl Table {
     pub fn add(&mut self, known: &Known, verdict: &Verdict) {
         let Some(slip) = &known.slip else {
-            if !known.pattern {
+            if known.pattern {
+                self.patterned += 1;
+                self.one_by_one += usize::from(!verdict.queries.is_empty());
+            } else {
                 self.clean += 1;
                 if !verdict.queries.is_empty() {
                     self.cried_wolf += 1;
@@ -95,6 +101,8 @@ impl Table {
         self.all.add(other.all);
         self.clean += other.clean;
         self.cried_wolf += other.cried_wolf;
+        self.patterned += other.patterned;
+        self.one_by_one += other.one_by_one;
         for (id, n) in other.wolves {
             *self.wolves.entry(id).or_default() += n;
         }
@@ -110,6 +118,10 @@ impl Table {
 
     pub fn first_three_share(&self) -> f64 {
         self.all.first_three as f64 / self.all.found.max(1) as f64
+    }
+
+    pub fn one_by_one_share(&self) -> f64 {
+        self.one_by_one as f64 / self.patterned.max(1) as f64
     }
 
     pub fn cried_wolf_share(&self) -> f64 {
@@ -136,14 +148,16 @@ impl fmt::Display for Table {
         }
         writeln!(
             f,
-            "found {:.1} %, first {:.1} %, first three {:.1} %; clean rows queried {} of {} ({:.2} %) {:?}",
+            "found {:.1} %, first {:.1} %, first three {:.1} %; clean rows queried {} of {} ({:.2} %) {:?}; on vessels with a pattern {} of {}",
             100.0 * self.found_share(),
             100.0 * self.first_share(),
             100.0 * self.first_three_share(),
             self.cried_wolf,
             self.clean,
             100.0 * self.cried_wolf_share(),
-            self.wolves
+            self.wolves,
+            self.one_by_one,
+            self.patterned
         )
     }
 }

@@ -2,7 +2,6 @@
 
 use super::super::evidence::{Context, UNKNOWN_GYRO};
 use super::super::explain::explain;
-use super::super::fleet::bodies;
 use super::super::learn::Logbook;
 use super::super::pattern::{Pattern, PatternId};
 use super::super::robust::{median, scale_about_zero};
@@ -17,11 +16,6 @@ const LEAST_ROWS: usize = 8;
 const LEAST_SHARE: f64 = 0.3;
 /// Share of the affected rows that the one slip must explain.
 const EXPLAINED: f64 = 0.75;
-
-/// Whether the slip makes the recomputed errors unreal, or only the logged ones.
-fn spoils_the_run(place: Place) -> bool {
-    place != Place::Working
-}
 
 /// Names the slip made throughout, if there is one; answers why nothing else can be read from the rows, where that is so.
 pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<String> {
@@ -47,7 +41,7 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
             speed_kn: kept.row().observation.and_then(|o| o.speed_kn),
             limits,
         };
-        for (rank, e) in explain(&kept.row(), &context, bodies(), 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
+        for (rank, e) in explain(&kept.row(), &context, 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
             match counts.iter_mut().find(|c| c.0 == e.slip && c.1 == e.place) {
                 Some(count) => (count.2, count.3) = (count.2 + 1, count.3 + rank),
                 None => counts.push((e.slip, e.place, 1, rank)),
@@ -70,7 +64,8 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
         book.observations
     );
     vessel.patterns.push(Pattern { id: PatternId::SameSlipThroughout, detail, since: None });
-    if !spoils_the_run(place) {
+    // In the working, the recomputed errors are real; in the record they are not.
+    if !place.is_in_record() {
         return None;
     }
     level_without_it(vessel, book, slip, place, limits);
