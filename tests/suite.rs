@@ -2,6 +2,7 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "a test that fails should stop")]
 
 mod commands;
+mod fuzz_replay;
 mod generator;
 mod gyro;
 mod layers;

@@ -38,8 +38,8 @@ fn signs_and_hemispheres() {
     assert_abs_diff_eq!(error(90.0, 50.0), 0.0, epsilon = 1e-9);
     assert!(speed_error(20.0, TrueBearing::wrapping_deg(0.0), lat(90.0), EquatorSpeed::Handbook).is_none());
     assert!(speed_error(f64::NAN, TrueBearing::wrapping_deg(0.0), lat(50.0), EquatorSpeed::Handbook).is_none());
-    // The earth's own speed, 902 to 904 by the sources.
-    assert_abs_diff_eq!(EquatorSpeed::Earth.kn(), 903.0, epsilon = 1.0);
+    // The earth's own speed: 902.5 to 904 by the sources, which take the mile differently and round.
+    assert!((902.4..904.2).contains(&EquatorSpeed::Earth.kn()));
 }
 
 /// The exercise of a damping error: 2.8 at 58 S becomes 1.01 E at 30 N; printed to 0.01.

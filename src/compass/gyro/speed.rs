@@ -9,7 +9,7 @@ pub enum EquatorSpeed {
     /// 900: the handbooks' round figure.
     #[default]
     Handbook,
-    /// One sidereal turn of the equator of WGS 84: 902.5.
+    /// One sidereal turn of the equator of WGS 84 in miles of 1852 m: 904.1 (902.5 were a mile a minute of the equator).
     Earth,
 }
 
