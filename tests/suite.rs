@@ -9,4 +9,5 @@ mod layers;
 mod magnetic;
 mod properties;
 mod published;
+mod readme;
 mod review;

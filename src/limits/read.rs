@@ -2,6 +2,7 @@
 
 use super::near::nearest;
 use super::settings::{Limits, SETTINGS, Table, Watches};
+use crate::angle::wrap_360_deg;
 use crate::error::{BadValue, Error, Result};
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
@@ -59,7 +60,7 @@ impl Limits {
                 other => return Err(file.unknown(at, "table", other, ["limits", "uncertainty", "ship"].into_iter())),
             }
         }
-        limits.consistent(&file)?;
+        limits.consistent(&file, root.get_ref().get("limits").and_then(|t| t.get_ref().as_table()))?;
         Ok(limits)
     }
 
@@ -71,6 +72,9 @@ impl Limits {
                 continue;
             }
             let Some(setting) = SETTINGS.iter().find(|s| s.table == table && s.key == name) else {
+                if let Some(home) = home_of(name) {
+                    return Err(file.refuse(at, format!("{name} stands under [{}]; its place is [{home}]", table.name())));
+                }
                 let known = SETTINGS.iter().filter(move |s| s.table == table).map(|s| s.key);
                 let watches = (table == Table::Limits).then_some("watches");
                 return Err(file.unknown(at, &format!("setting of [{}]", table.name()), name, known.chain(watches)));
@@ -91,22 +95,30 @@ impl Limits {
     fn read_ship(&mut self, file: &File, content: &DeTable) -> Result<()> {
         for (key, value) in content {
             if key.get_ref() != "blind_arcs" {
+                if let Some(home) = home_of(key.get_ref()) {
+                    return Err(file.refuse(key.span().start, format!("{} stands under [ship]; its place is [{home}]", key.get_ref())));
+                }
                 return Err(file.unknown(key.span().start, "setting of [ship]", key.get_ref(), ["blind_arcs"].into_iter()));
             }
-            let refuse = |at: usize| {
+            let refuse = |value: &Spanned<DeValue>| {
                 file.refuse(
-                    at,
-                    "blind_arcs: expected pairs of relative bearings from 0 to 360, clockwise, such as [[150, 175], [185, 210]]",
+                    value.span().start,
+                    format!(
+                        "blind_arcs, {}: expected pairs of relative bearings from 0 to 360, clockwise, such as [[150, 175], [185, 210]]",
+                        shown(file, value)
+                    ),
                 )
             };
-            let pairs = value.get_ref().as_array().ok_or_else(|| refuse(value.span().start))?;
-            for pair in pairs {
-                let at = pair.span().start;
-                let ends: Vec<f64> =
-                    pair.get_ref().as_array().ok_or_else(|| refuse(at))?.iter().filter_map(|e| number(e.get_ref())).collect();
-                match ends[..] {
-                    [from, to] if (0.0..=360.0).contains(&from) && (0.0..=360.0).contains(&to) => self.ship.blind_arcs.push((from, to)),
-                    _ => return Err(refuse(at)),
+            for pair in value.get_ref().as_array().ok_or_else(|| refuse(value))? {
+                let ends: Option<Vec<f64>> = pair.get_ref().as_array().and_then(|ends| ends.iter().map(|e| number(e.get_ref())).collect());
+                match ends.as_deref() {
+                    // 360 is 000; an arc that ends where it begins, 0 to 360 too, leaves nothing or everything to be seen.
+                    Some([from, to])
+                        if [from, to].into_iter().all(|end| (0.0..=360.0).contains(end)) && wrap_360_deg(*from) != wrap_360_deg(*to) =>
+                    {
+                        self.ship.blind_arcs.push((wrap_360_deg(*from), wrap_360_deg(*to)));
+                    }
+                    _ => return Err(refuse(pair)),
                 }
             }
         }
@@ -114,18 +126,32 @@ impl Limits {
     }
 
     /// Settings that must stand in order.
-    fn consistent(&self, file: &File) -> Result<()> {
+    fn consistent(&self, file: &File, table: Option<&DeTable>) -> Result<()> {
         let t = &self.thresholds;
         for (low, low_key, high, high_key) in [
             (t.altitude_fair_deg, "altitude_fair", t.altitude_weak_deg, "altitude_weak"),
             (t.off_card_deg, "off_card", t.off_card_once_deg, "off_card_once"),
         ] {
             if low > high {
-                let at = file.text.find(low_key).unwrap_or(0);
+                // The one of the two that was set; it stands there, or the built-in values would be out of order.
+                let at = table
+                    .into_iter()
+                    .flat_map(|t| t.iter())
+                    .find(|(key, _)| [low_key, high_key].contains(&key.get_ref().as_ref()))
+                    .map_or(0, |(key, _)| key.span().start);
                 return Err(file.refuse(at, format!("{low_key} ({low}) is over {high_key} ({high})")));
             }
         }
         Ok(())
+    }
+}
+
+/// The table that a key belongs to, whichever it was found in.
+fn home_of(key: &str) -> Option<&'static str> {
+    match key {
+        "watches" => Some("limits"),
+        "blind_arcs" => Some("ship"),
+        _ => SETTINGS.iter().find(|s| s.key == key).map(|s| s.table.name()),
     }
 }
 
@@ -196,8 +222,14 @@ mod tests {
             "ship.toml, line 2: watches = \"3on9off\": expected \"4on8off\" or \"6on6off\""
         );
         assert!(refused("deviation = 7\n").contains("stands in no table"));
-        assert!(refused("[ship]\nblind_arcs = [[10]]\n").contains("pairs of relative bearings"));
+        for arc in ["[10]", "[10, \"x\", 20]", "[350, 400]", "[90, 90]", "[0, 360]", "10", "[1, 2, 3]"] {
+            assert!(refused(&format!("[ship]\nblind_arcs = [{arc}]\n")).contains(&format!("blind_arcs, {arc}: expected pairs")), "{arc}");
+        }
         assert!(refused("[limits]\naltitude_fair = 50\naltitude_weak = 40\n").contains("altitude_fair (50) is over altitude_weak (40)"));
+        assert_eq!(refused("# off_card\n[limits]\noff_card_once = 2\n"), "ship.toml, line 3: off_card (3) is over off_card_once (2)");
+        assert_eq!(refused("[limits]\ntilt = 0.3\n"), "ship.toml, line 2: tilt stands under [limits]; its place is [uncertainty]");
+        assert_eq!(refused("[ship]\nwatches = \"4on8off\"\n"), "ship.toml, line 2: watches stands under [ship]; its place is [limits]");
+        assert!(refused("[limits]\nblind_arcs = []\n").ends_with("its place is [ship]"));
         assert!(refused("[limits\n").starts_with("ship.toml, line 1: "));
     }
 
@@ -205,5 +237,7 @@ mod tests {
     fn blind_arcs() {
         let limits = Limits::from_toml("[ship]\nblind_arcs = [[150, 175.5], [185, 210]]\n", "ship.toml").unwrap();
         assert_eq!(limits.ship.blind_arcs, [(150.0, 175.5), (185.0, 210.0)]);
+        let across_the_bow = Limits::from_toml("[ship]\nblind_arcs = [[350, 360]]\n", "ship.toml").unwrap();
+        assert_eq!(across_the_bow.ship.blind_arcs, [(350.0, 0.0)]);
     }
 }

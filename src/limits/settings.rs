@@ -62,7 +62,7 @@ pub struct Limits {
 /// What is known of the ship.
 #[derive(Debug, Clone, PartialEq, Default)]
 pub struct Ship {
-    /// Arcs of relative bearing that cannot be seen from the repeaters: from and to, clockwise, degrees `0..360`.
+    /// Arcs of relative bearing that cannot be seen from the repeaters: from and to, clockwise, degrees `0 <= x < 360`.
     pub blind_arcs: Vec<(f64, f64)>,
 }
 
@@ -127,6 +127,8 @@ settings! {
     /// Thresholds of trust, notices, queries and patterns.
     Thresholds in Limits as thresholds {
         gyro_settle_deg "gyro_settle" = 0.75 "degrees", 0.0 to 10.0: "Error allowed at the gyro's settle point, times sec(latitude)"; "IMO A.424(XI), A.821(19), ISO 8728".
+        gyro_scatter_deg "gyro_scatter" = 0.25 "degrees", 0.0 to 10.0: "Scatter allowed of a settled gyro's single readings about their mean, times sec(latitude)"; "IMO A.424(XI), A.821(19), ISO 8728".
+        gyro_settles_within_h "gyro_settles_within_h" = 6.0 "hours", 0.5 to 48.0: "Time from its start within which a gyro must have settled"; "IMO A.424(XI), A.821(19), ISO 8728".
         gyro_margin_deg "gyro_margin" = 0.5 "degrees", 0.0 to 10.0: "Added to that for what a repeater and its reading may add"; "IMO A.424(XI): repeater against master 0.5".
         gyro_doubtful_latitude_deg "gyro_doubtful_latitude" = 70.0 "degrees", 30.0 to 90.0: "Latitude from which a gyro is doubtful"; "common practice".
         deviation_deg "deviation" = 5.0 "degrees", 0.0 to 45.0: "Deviation over which the compass is to be adjusted"; "AMSA; Marshall Islands MN 2-011-32".
@@ -135,10 +137,10 @@ settings! {
         too_high_deg "too_high" = 75.0 "degrees", 0.0 to 90.0: "Altitude over which a bearing needs an explanation"; "our own: a degree of tilt is 3.7 there".
         horizon_weak "horizon_weak" = 1.5 "degrees a degree", 0.0 to 100.0: "tan(latitude) / sin(azimuth) from which an amplitude is weak"; "our own band".
         heeled_deg "heeled" = 3.0 "degrees", 0.0 to 90.0: "Heel from which it is said"; "our own".
-        weak_field_nt "weak_field" = 6000.0 "nT", 0.0 to 60000.0: "Horizontal field under which a magnetic compass is sluggish"; "World Magnetic Model report (from memory)".
+        weak_field_nt "weak_field_nt" = 6000.0 "nT", 0.0 to 60000.0: "Horizontal field under which a magnetic compass is sluggish"; "World Magnetic Model report (from memory)".
         alteration_deg "alteration" = 15.0 "degrees", 1.0 to 180.0: "Change of heading that counts as a large alteration"; "common practice: house rules run from 5 to 20".
-        after_turn_min "after_turn" = 120.0 "minutes", 0.0 to 600.0: "Time after a large alteration in which the gyro may be settling"; "common practice: 1.5 to 2 hours".
-        zone_odd_h "zone_odd" = 2.0 "hours", 0.0 to 24.0: "Difference of the zone from longitude / 15 from which it is said"; "our own".
+        after_turn_h "after_turn_h" = 2.0 "hours", 0.0 to 10.0: "Time after a large alteration in which the gyro may be settling"; "common practice: 1.5 to 2 hours".
+        zone_odd_h "zone_odd_h" = 2.0 "hours", 0.0 to 24.0: "Difference of the zone from longitude / 15 from which it is said"; "our own".
         below_horizon_deg "below_horizon" = -1.0 "degrees", -90.0 to 10.0: "Altitude under which a body is below the horizon"; "our own: refraction and dip take 0.9 at most from 30 m".
         not_dark_bright_deg "not_dark_bright" = -3.0 "degrees", -90.0 to 90.0: "Sun's altitude over which no star or planet of magnitude 0 or brighter is seen"; "our own".
         not_dark_faint_deg "not_dark_faint" = -4.5 "degrees", -90.0 to 90.0: "The same for fainter ones"; "our own".
@@ -152,7 +154,7 @@ settings! {
         variation_stale_deg "variation_stale" = 0.7 "degrees", 0.0 to 180.0: "The same throughout a vessel, from which its variation is old"; "our own".
         far_from_horizon_deg "far_from_horizon" = 1.5 "degrees", 0.0 to 90.0: "Altitude from the horizon stated, at rising or setting"; "our own: ten minutes of a low sun in middle latitudes".
         max_speed_kn "max_speed_kn" = 25.0 "knots", 1.0 to 100.0: "Speed over which two positions are too far apart"; "our own".
-        too_far_margin_nm "too_far_margin" = 10.0 "miles", 0.0 to 1000.0: "Added to speed times time between positions"; "our own".
+        too_far_margin_nm "too_far_margin_nm" = 10.0 "miles", 0.0 to 1000.0: "Added to speed times time between positions"; "our own".
         constant_a_card_deg "constant_a_card" = 1.0 "degrees", 0.0 to 45.0: "Constant off the card from which a lubber line is suspected"; "common practice: A over 1 is doubtful".
         constant_a_deg "constant_a" = 1.5 "degrees", 0.0 to 45.0: "The same for coefficient A where no card is given"; "our own".
         repeater_differs_deg "repeater_differs" = 0.5 "degrees", 0.0 to 45.0: "Difference between repeaters"; "IMO A.424(XI): repeater against master 0.5".

@@ -185,7 +185,7 @@ fn after_turn(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limit
     let turned = wrap_180_deg(fact.compass_heading_deg()? - before.compass_heading_deg()?).abs();
     let minutes = (fact.seconds()? - before.seconds()?) as f64 / 60.0;
     let spinning = row.observation?.gyro_type == crate::compass::GyroType::Spinning;
-    (spinning && turned > limits.thresholds.alteration_deg && (0.0..limits.thresholds.after_turn_min).contains(&minutes))
+    (spinning && turned > limits.thresholds.alteration_deg && (0.0..limits.thresholds.after_turn_h * 60.0).contains(&minutes))
         .then_some(Notice::AfterTurn { minutes })
 }
 
