@@ -54,6 +54,24 @@ impl Input {
     }
 }
 
+/// Refuses outputs that are the input itself, or each other, whatever they are called.
+pub fn never_over_input<'p>(input: &Path, outputs: impl IntoIterator<Item = &'p Option<PathBuf>>) -> Result<()> {
+    let same = |a: &Path, b: &Path| a == b || same_file::is_same_file(a, b).unwrap_or(false);
+    let mut before = vec![input];
+    for output in outputs.into_iter().flatten() {
+        if let Some(other) = before.iter().find(|other| same(other, output)) {
+            let what = if *other == input {
+                "the input itself: give another name, what was read is never overwritten"
+            } else {
+                "asked for twice: give two names"
+            };
+            return Err(Error::Usage(format!("{} is {what}", output.display())));
+        }
+        before.push(output);
+    }
+    Ok(())
+}
+
 /// Where rows go: standard output, or a file that appears whole when the run ends.
 pub enum RowsOut {
     /// Standard output.

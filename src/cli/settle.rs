@@ -1,6 +1,7 @@
 //! `shadowpin settle`: a gyro's run-up.
 
 use super::exit::Exit;
+use super::files;
 use super::instruments::read_limits;
 use super::output::{Format, OutputArgs};
 use super::read;
@@ -18,8 +19,9 @@ use std::path::PathBuf;
 /// A gyro's run-up: where it settles, and whether it has.
 #[derive(Debug, ClapArgs)]
 #[command(after_help = "Example:\n  shadowpin settle fixtures/runups/runup_00.csv --lat 51-30N\n\n\
-    Rows: utc and gyro_error; or utc and gyro_heading with --true-heading; or utc, lat, lon, body and gyro_bearing.\n\
-    Exit 0 when it has settled and is inside the standard; 1 when not yet, over it, or it cannot be told; 3 when rows could not be used.")]
+    Rows: utc and gyro_error; or utc and gyro_heading with --true-heading; or a log's columns for a bearing, such as utc, lat, lon, body and gyro_bearing.\n\
+    Exit 0 when it has settled and is inside the limits; 1 when not yet, over them, or it cannot be told; 3 when rows could not be used.\n\
+    --format csv gives the readings, each with what the swing expects of it, and those to come.")]
 pub struct Args {
     /// The run-up (CSV), or - for standard input
     #[arg(value_name = "RUNUP")]
@@ -42,25 +44,26 @@ pub struct Args {
 
 /// Judges the run-up and writes the answer.
 pub fn run(args: Args) -> Result<Exit> {
-    if args.output.format == Format::Csv {
-        return Err(Error::Usage("settle answers as text or json".into()));
-    }
+    files::never_over_input(&args.run_up, [&args.output.output, &args.chart])?;
     let limits = read_limits(args.limits.as_deref())?;
     let true_heading = args.true_heading.as_deref().map(|h| option("--true-heading", read_direction(h))).transpose()?;
     let latitude = args.lat.as_deref().map(|l| option("--lat", read_latitude(l))).transpose()?.map(|l| l.value);
     let (name, bytes) = read::content(&args.run_up)?;
     let run_up = read_run_up(&name, &bytes, true_heading.map(|h| TrueBearing::wrapping_deg(h.value)), &limits)?;
-    let found = assess(&run_up.readings, latitude);
-    let page = SettlePage { run_up: &run_up, found: &found };
+    let found = assess(&run_up.readings, latitude, &limits);
+    let page = SettlePage { run_up: &run_up, found: &found, latitude, limits: &limits };
     if let Some(path) = &args.chart {
         std::fs::write(path, chart::run_up(&page)).map_err(|source| Error::File { path: path.clone(), source })?;
     }
-    args.output.write(&if args.output.format == Format::Json { page.json() } else { page.text() })?;
+    args.output.write(&match args.output.format {
+        Format::Text => page.text(),
+        Format::Json => page.json(),
+        Format::Csv => page.csv(),
+    })?;
     if !args.output.quiet {
         run_up.problems.iter().for_each(|problem| eprintln!("{problem}"));
     }
-    let over =
-        found.settle_point_limit.is_some_and(|(_, inside)| inside == Some(false)) || found.scatter_limit.is_some_and(|(_, inside)| !inside);
+    let over = [found.settle_point_held, found.scatter_held].into_iter().flatten().any(|held| held.inside == Some(false));
     let settled = matches!(found.settled, Settled::Since { .. });
     Ok(match (run_up.problems.is_empty(), settled && !over && !found.too_slow) {
         (false, _) => Exit::Problems,

@@ -1,7 +1,11 @@
 //! The sixteen run-ups with known settle points.
+//!
+//! Their `minutes_until_within_0.7` counts from the first reading to the instant after which the swing, without the noise of reading, is
+//! never more than 0.7 degrees off its settle point: the same as [`Assessment::within_band_min`](shadowpin::compass::gyro::settle::Assessment).
 
 use super::readings;
 use shadowpin::compass::gyro::settle::{Settled, assess};
+use shadowpin::limits::Limits;
 use shadowpin::time::text::read_utc;
 
 fn fixture(name: &str) -> String {
@@ -26,7 +30,7 @@ fn settle_points_and_instants() {
         let rows: Vec<(f64, f64)> = rows.into_iter().map(|(t, e)| (t - from, e)).collect();
         let number = |key: &str| run[key].as_f64().unwrap();
         let (point, instant, observed) = (number("settle_point"), number("minutes_until_within_0.7"), number("observed_minutes"));
-        let found = assess(&readings(&rows), None);
+        let found = assess(&readings(&rows), None, &Limits::default());
         let (ours, u) = found.settle_point.unwrap_or((f64::NAN, f64::NAN));
         inside += usize::from((ours - point).abs() <= 3.0 * u);
         let near = found.within_band_min.is_some_and(|(a, b)| (a - instant).abs() <= 10.0 || (b - instant).abs() <= 10.0);
@@ -47,7 +51,7 @@ fn settle_points_and_instants() {
             swing.map_or(f64::NAN, |s| s.half_swing_ratio),
             found.within_band_min.map(|(a, b)| (a.round(), b.round())),
             found.settled,
-            swing.map(|s| s.set_aside.clone()),
+            found.set_aside,
         );
     }
     println!("settle point within 3 u: {inside} of 16; instant within 10 minutes: {predicted} of {long}; wrongly settled: {wrongly}");

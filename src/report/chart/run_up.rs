@@ -53,7 +53,7 @@ pub fn run_up(page: &SettlePage) -> String {
                 path d=(curve.trim_end()) fill="none" stroke="#000" stroke-width="1.5" {}
                 @for r in readings {
                     @let (px, py) = (x.text(r.minutes), y.text(inside(r.error_deg)));
-                    @if page.found.swing.as_ref().is_some_and(|s| s.set_aside.iter().any(|(row, _)| *row == r.row)) {
+                    @if page.found.set_aside.iter().any(|(row, _)| *row == r.row) {
                         g stroke="#000" stroke-width="2" {
                             path d={ "M" (px) "," (py) " m-5,-5 l10,10 m-10,0 l10,-10" } {}
                         }

@@ -2,11 +2,12 @@
 
 mod fit;
 mod judge;
+mod still;
 
 pub use fit::{Swing, fit};
-pub use judge::{Assessment, Settled, Why, assess};
+pub use judge::{Assessment, Held, NotYet, Settled, ToCome, Why, assess};
 
-/// Standards of the settling of a gyrocompass.
+/// What settled means by the standards of gyrocompasses; what they allow of settle point, scatter and hours stands in the limits.
 ///
 /// Source: IMO A.424(XI), A.821(19), ISO 8728.
 pub mod standard {
@@ -14,12 +15,6 @@ pub mod standard {
     pub const BAND_DEG: f64 = 0.7;
     /// Minutes over which three readings, half an hour apart, must stay within the band.
     pub const PROOF_MIN: f64 = 60.0;
-    /// Hours within which a gyro must settle.
-    pub const WITHIN_H: f64 = 6.0;
-    /// Error allowed at the settle point, times sec(latitude), degrees.
-    pub const SETTLE_POINT_DEG: f64 = 0.75;
-    /// Scatter allowed of single readings about their mean, times sec(latitude), degrees.
-    pub const SCATTER_DEG: f64 = 0.25;
 }
 
 /// One reading of a run-up.
