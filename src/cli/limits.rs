@@ -1,6 +1,7 @@
 //! `shadowpin limits`: every threshold and uncertainty in force, with its origin.
 
 use super::exit::Exit;
+use super::files;
 use super::instruments::read_limits;
 use super::output::{Format, OutputArgs};
 use clap::Args as ClapArgs;
@@ -21,6 +22,9 @@ pub struct Args {
 
 /// Writes the list.
 pub fn run(args: Args) -> Result<Exit> {
+    if let Some(file) = &args.limits {
+        files::never_over_input(file, [&args.output.output])?;
+    }
     let in_force = read_limits(args.limits.as_deref())?;
     let answer = match args.output.format {
         Format::Text => limits::text(&in_force),

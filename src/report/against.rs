@@ -21,8 +21,12 @@ fn speed(observation: &Observation, worked: &Worked) -> Option<String> {
     if observation.gyro_type == GyroType::Other {
         return None;
     }
-    let course = worked.true_heading?;
-    let expected = speed_error(speed_kn, course, place.position.lat, EquatorSpeed::Handbook)?;
+    let Some(course) = worked.true_heading else {
+        return Some("Speed error: it goes with the course, so the heading by gyro is needed too.".to_owned());
+    };
+    let Some(expected) = speed_error(speed_kn, course, place.position.lat, EquatorSpeed::Handbook) else {
+        return Some("Speed error: none can be reckoned so near the pole.".to_owned());
+    };
     let verdict = speed_verdict(observation.gyro_type, observed.value, observed.u_deg(), expected);
     Some(format!("Speed error at {speed_kn} kn on that course, were the corrector off: {}; {}.", low_high(expected.deg()), verdict.words()))
 }

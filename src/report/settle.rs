@@ -105,12 +105,14 @@ impl SettlePage<'_> {
             said.push("The rows stood in another order and were put in order of time.".to_owned());
         }
         if !self.run_up.copies.is_empty() {
-            let rows: Vec<String> = self.run_up.copies.iter().take(10).map(ToString::to_string).collect();
-            let more = if self.run_up.copies.len() > rows.len() { " and more" } else { "" };
-            said.push(format!("Copies of an earlier row were left out: row {}{more}.", rows.join(", ")));
+            let rows: Vec<String> = self.run_up.copies.iter().take(SHOWN).map(ToString::to_string).collect();
+            let more = if self.run_up.copies.len() > SHOWN { ", and more" } else { "" };
+            said.push(format!("Rows that are copies of an earlier one were left out: {}{more}.", rows.join(", ")));
         }
-        for (a, b) in self.run_up.same_time.iter().take(10) {
-            said.push(format!("Rows {a} and {b} have the same time and different readings. Is one of the times wrong?"));
+        if !self.run_up.same_time.is_empty() {
+            let pairs: Vec<String> = self.run_up.same_time.iter().take(SHOWN).map(|(a, b)| format!("{a} and {b}")).collect();
+            let more = if self.run_up.same_time.len() > SHOWN { ", and more" } else { "" };
+            said.push(format!("Rows {}{more} have the same time and different readings. Is one of the times wrong?", pairs.join(", ")));
         }
         said
     }
@@ -120,7 +122,7 @@ impl SettlePage<'_> {
             page.line("settle point", &low_high(point), &words::u(u));
         }
         if let Some(swing) = &self.found.swing {
-            page.line("period", &format!("{:.1} min", swing.period_min), &format!("u {:.1}", swing.period_u_min));
+            page.line("period", &format!("{:.1} min", swing.period_min), &words::u(swing.period_u_min));
             let ratio_u = swing.half_swing_ratio_u;
             page.line("half swings go down to", &format!("{:.2}", swing.half_swing_ratio), &format!("of the one before, u {ratio_u:.3}"));
             page.line(
@@ -241,6 +243,9 @@ impl SettlePage<'_> {
     }
 }
 
+/// So many rows are named in a sentence.
+const SHOWN: usize = 5;
+
 /// The standard judges the scatter by so many readings.
 const STANDARD_READINGS: usize = 10;
 
@@ -254,6 +259,7 @@ fn readings(n: usize) -> String {
 
 fn why_words(why: Why) -> String {
     match why {
+        Why::TooShort { readings: 0, .. } => "there is no reading of the gyro.".to_owned(),
         Why::TooShort { readings: n, minutes } => format!(
             "{} over {minutes:.0} minutes {} too little to know the swing by; take one each ten minutes, over a whole period.",
             readings(n),

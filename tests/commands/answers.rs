@@ -1,28 +1,6 @@
 //! Whole answers, compared with files that were read by a person.
 
-use super::{expected, shadowpin};
-
-/// The words of a command line, quotes kept together.
-fn words(line: &str) -> Vec<String> {
-    let mut words = vec![String::new()];
-    let mut quoted = false;
-    for c in line.chars() {
-        match c {
-            '"' => quoted = !quoted,
-            ' ' if !quoted => words.push(String::new()),
-            c => words.last_mut().unwrap().push(c),
-        }
-    }
-    words.retain(|w| !w.is_empty());
-    words
-}
-
-fn answers(line: &str, file: &str, code: i32) {
-    let words = words(line);
-    let ran = shadowpin(&words.iter().map(String::as_str).collect::<Vec<_>>(), b"");
-    assert_eq!(ran.code, Some(code), "{line}\n{}", ran.err);
-    assert_eq!(ran.out, expected(file), "{line}");
-}
+use super::{answers, shadowpin, words};
 
 #[test]
 fn azimuth_shows_the_working() {

@@ -4,6 +4,7 @@ mod answers;
 mod bad_logs;
 mod delivered_log;
 mod files;
+mod settle;
 
 use std::io::Write;
 use std::path::{Path, PathBuf};
@@ -52,4 +53,27 @@ pub fn expected(name: &str) -> String {
 /// A path in `fixtures`.
 pub fn fixture(name: &str) -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).join("fixtures").join(name)
+}
+
+/// The words of a command line, quotes kept together.
+fn words(line: &str) -> Vec<String> {
+    let mut words = vec![String::new()];
+    let mut quoted = false;
+    for c in line.chars() {
+        match c {
+            '"' => quoted = !quoted,
+            ' ' if !quoted => words.push(String::new()),
+            c => words.last_mut().unwrap().push(c),
+        }
+    }
+    words.retain(|w| !w.is_empty());
+    words
+}
+
+/// Runs a command line and compares its output with a file of `fixtures/reports`.
+pub fn answers(line: &str, file: &str, code: i32) {
+    let words = words(line);
+    let ran = shadowpin(&words.iter().map(String::as_str).collect::<Vec<_>>(), b"");
+    assert_eq!(ran.code, Some(code), "{line}\n{}", ran.err);
+    assert_eq!(ran.out, expected(file), "{line}");
 }

@@ -3,6 +3,7 @@
 mod generator;
 mod made;
 mod runups;
+mod speed;
 
 use shadowpin::compass::gyro::settle::RunUpReading;
 

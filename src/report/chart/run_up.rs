@@ -8,49 +8,58 @@ use std::fmt::Write as _;
 
 const WIDTH: f64 = 760.0;
 const HEIGHT: f64 = 420.0;
+const CURVE_STEPS: u32 = 300;
 
 /// The picture. Early swings are large: the scale is cut at twelve degrees either side of the settle point, and readings beyond are
-/// drawn on its edge as open triangles.
+/// drawn on its edge as open triangles. Readings to come are a broken line.
 pub fn run_up(page: &SettlePage) -> String {
     let readings = &page.run_up.readings;
-    let end = readings.last().map_or(1.0, |r| r.minutes).max(1.0);
+    let last = readings.last().map_or(1.0, |r| r.minutes).max(1.0);
+    let end = page.found.to_come.last().map_or(last, |r| r.minutes);
     let middle = page.found.settle_point.map_or(0.0, |p| p.0);
     let reach = readings.iter().map(|r| (r.error_deg - middle).abs()).fold(2.0, f64::max).min(12.0) * 1.05;
     let x = Scale { from: (0.0, end), to: (70.0, WIDTH - 20.0) };
     let y = Scale { from: (middle - reach, middle + reach), to: (HEIGHT - 60.0, 40.0) };
     let inside = |error: f64| error.clamp(middle - reach, middle + reach);
-    let mut curve = String::new();
-    if let Some(swing) = &page.found.swing {
-        for step in 0..=300 {
-            let t = end * f64::from(step) / 300.0;
-            let _ = write!(curve, "{}{},{} ", if step == 0 { "M" } else { "L" }, x.text(t), y.text(inside(swing.error_deg(t))));
+    let curve = |from: f64, to: f64| -> String {
+        let Some(swing) = &page.found.swing else { return String::new() };
+        let mut path = String::new();
+        for step in 0..=CURVE_STEPS {
+            let t = from + (to - from) * f64::from(step) / f64::from(CURVE_STEPS);
+            let _ = write!(path, "{}{},{} ", if step == 0 { "M" } else { "L" }, x.text(t), y.text(inside(swing.error_deg(t))));
         }
-    }
-    let band = page
-        .found
-        .settle_point
-        .map(|p| (y.text(p.0 + standard::BAND_DEG), y.at(p.0 - standard::BAND_DEG) - y.at(p.0 + standard::BAND_DEG)));
+        path.truncate(path.trim_end().len());
+        path
+    };
+    let band =
+        page.found.settle_point.map(|p| (y.at(p.0 + standard::BAND_DEG), y.at(p.0 - standard::BAND_DEG) - y.at(p.0 + standard::BAND_DEG)));
     let beyond = |error: f64| (error - middle).abs() > reach;
     let markup = html! {
         svg xmlns="http://www.w3.org/2000/svg" viewBox={ "0 0 " (WIDTH) " " (HEIGHT) } role="img" aria-labelledby="run-up-title run-up-desc" font-family="sans-serif" font-size="13" fill="currentColor" {
             title id="run-up-title" { "Run-up of a gyrocompass: gyro error by time" }
-            desc id="run-up-desc" { (page.verdict()) " " (readings.len()) " readings over " (format!("{end:.0}")) " minutes." }
+            desc id="run-up-desc" { (page.verdict()) " " (readings.len()) " readings over " (format!("{last:.0}")) " minutes." }
             rect width=(WIDTH) height=(HEIGHT) fill="#fff" {}
             g fill="#000" stroke="none" {
                 @if let Some((top, height)) = &band {
-                    rect x=(x.text(0.0)) y=(top) width=(format!("{:.1}", x.at(end) - x.at(0.0))) height=(format!("{height:.1}")) fill="#ddd" {}
+                    rect x=(x.text(0.0)) y=(format!("{top:.1}")) width=(format!("{:.1}", x.at(end) - x.at(0.0))) height=(format!("{height:.1}")) fill="#ddd" {}
                 }
                 @for t in ticks(middle - reach, middle + reach, 8) {
                     line x1=(x.text(0.0)) x2=(x.text(end)) y1=(y.text(t)) y2=(y.text(t)) stroke="#bbb" stroke-width=(if t == 0.0 { "1.5" } else { "0.5" }) {}
                     text x="62" y=(format!("{:.1}", y.at(t) + 4.0)) text-anchor="end" { (degrees(t)) }
                 }
-                @for t in ticks(0.0, end, 8) {
+                @for t in minutes(end) {
                     line x1=(x.text(t)) x2=(x.text(t)) y1=(format!("{:.1}", HEIGHT - 60.0)) y2=(format!("{:.1}", HEIGHT - 54.0)) stroke="#000" {}
                     text x=(x.text(t)) y=(format!("{:.1}", HEIGHT - 38.0)) text-anchor="middle" { (format!("{t:.0}")) }
                 }
                 text x=(format!("{:.1}", f64::midpoint(x.at(0.0), x.at(end)))) y=(format!("{:.1}", HEIGHT - 14.0)) text-anchor="middle" { "minutes from the first reading" }
+                @if let Some((top, _)) = &band {
+                    text x=(format!("{:.1}", x.at(end) - 4.0)) y=(format!("{:.1}", top - 5.0)) text-anchor="end" font-size="11" { "within " (standard::BAND_DEG) " of the settle point" }
+                }
                 text x="14" y="22" { "gyro error, degrees: L low (east), H high (west)" }
-                path d=(curve.trim_end()) fill="none" stroke="#000" stroke-width="1.5" {}
+                path d=(curve(0.0, last)) fill="none" stroke="#000" stroke-width="1.5" {}
+                @if end > last {
+                    path d=(curve(last, end)) fill="none" stroke="#000" stroke-width="1.5" stroke-dasharray="6 4" {}
+                }
                 @for r in readings {
                     @let (px, py) = (x.text(r.minutes), y.text(inside(r.error_deg)));
                     @if page.found.set_aside.iter().any(|(row, _)| *row == r.row) {
@@ -67,6 +76,12 @@ pub fn run_up(page: &SettlePage) -> String {
         }
     };
     markup.into_string() + "\n"
+}
+
+/// Times to be marked: tens of minutes, half hours or whole ones, at most ten of them.
+fn minutes(end: f64) -> Vec<f64> {
+    let step = [10.0, 30.0, 60.0, 120.0].into_iter().find(|step| end / step <= 10.0).unwrap_or((end / 600.0).ceil() * 60.0);
+    (0..=(end / step) as u32).map(|i| f64::from(i) * step).collect()
 }
 
 fn degrees(t: f64) -> String {

@@ -127,7 +127,7 @@ const TO_COME: u32 = 6;
 /// Settled: the swing stays within 0.7 degrees of its settle point from that instant on, also where an extreme is within two u of 0.7, and
 /// readings over the hour that the standard asks (three, half an hour apart) are within 0.7 of it, the last one among them.
 ///
-/// Error bound: none of 1200 made run-ups, nor of their beginnings, is called settled that is not (`tests/gyro/made.rs`).
+/// Error bound: none of 1200 made run-ups, nor of 1800 beginnings of others, is called settled that is not (`tests/gyro/made.rs`).
 ///
 /// Source: IMO A.424(XI), A.821(19), ISO 8728 for the band, the hour, the settle point and the scatter.
 pub fn assess(readings: &[RunUpReading], latitude: Option<Latitude>, limits: &Limits) -> Assessment {
@@ -202,7 +202,7 @@ fn by_swing(found: &mut Assessment, readings: &[RunUpReading], swing: Swing, spa
     if let Settled::Since { minutes } = found.settled {
         let after: Vec<f64> = kept.iter().filter(|r| r.minutes >= minutes).map(|r| r.error_deg).collect();
         found.scatter = Some((mean_and_sd(&after).1, after.len()));
-    } else {
+    } else if !matches!(found.settled, Settled::NotYet(NotYet::LastReadingsOff { readings: 2.. })) {
         found.to_come = to_come(readings, &swing, span_min);
     }
     found.too_slow = found.within_band_min.is_none_or(|(early, _)| early > limits.thresholds.gyro_settles_within_h * 60.0);
