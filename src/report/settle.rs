@@ -124,16 +124,24 @@ impl SettlePage<'_> {
         if let Some(swing) = &self.found.swing {
             page.line("period", &format!("{:.1} min", swing.period_min), &words::u(swing.period_u_min));
             let ratio_u = swing.half_swing_ratio_u;
-            page.line("half swings go down to", &format!("{:.2}", swing.half_swing_ratio), &format!("of the one before, u {ratio_u:.3}"));
+            page.line(
+                "half swings go down to",
+                &format!("{:.2}", swing.half_swing_ratio),
+                &format!("of the one before, u {:.3}", ratio_u.max(0.001)),
+            );
             page.line(
                 "damping",
                 &format!("{:.0} %", 100.0 * (1.0 - swing.half_swing_ratio)),
-                &format!("of each half swing, u {:.1}", 100.0 * ratio_u),
+                &format!("of each half swing, {}", words::u(100.0 * ratio_u)),
             );
             page.line("readings scatter by", &format!("{:.2}", swing.scatter_deg), "degrees about the swing");
         }
-        for (row, off) in &self.found.set_aside {
+        for (row, off) in self.found.set_aside.iter().take(SHOWN) {
             page.sentence(&format!("Row {row} was set aside: it is {:.1} degrees off. Was it misread?", off.abs()));
+        }
+        let more = self.found.set_aside.len().saturating_sub(SHOWN);
+        if more > 0 {
+            page.sentence(&format!("So were {more} more; --format csv names each."));
         }
     }
 

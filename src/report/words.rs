@@ -5,7 +5,13 @@ use crate::time::{UtcInstant, Zone};
 
 /// An uncertainty beside a figure: `u 0.4`; two decimals under 0.1, so that a small one is not shown as nothing.
 pub fn u(u_deg: f64) -> String {
-    if u_deg < 0.095 { format!("u {u_deg:.2}") } else { format!("u {u_deg:.1}") }
+    if u_deg > 0.0 && u_deg < 0.005 {
+        "u under 0.01".to_owned()
+    } else if u_deg < 0.095 {
+        format!("u {u_deg:.2}")
+    } else {
+        format!("u {u_deg:.1}")
+    }
 }
 
 /// When, in UTC and, where a zone is given, in ship's time.

@@ -20,7 +20,7 @@ impl Rng {
         of[(self.next() % of.len() as u64) as usize]
     }
 
-    fn normal(&mut self) -> f64 {
+    pub fn normal(&mut self) -> f64 {
         (0..12).map(|_| self.between(0.0, 1.0)).sum::<f64>() - 6.0
     }
 }

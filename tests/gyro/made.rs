@@ -235,3 +235,22 @@ fn readings_to_come_are_those_that_come() {
         assert!((r.error_deg - swing(r.minutes)).abs() <= 3.0 * r.u_deg && r.u_deg < 1.0, "{r:?}");
     }
 }
+
+/// A repeater logged each minute or each five seconds: single readings scatter beyond the band, and the answer is the same, and soon there.
+#[test]
+fn readings_by_the_thousand() {
+    for (spacing, n) in [(1.0, 361_u32), (1.0 / 12.0, 4321)] {
+        let mut rng = Rng(305);
+        let rows: Vec<(f64, f64)> =
+            (0..n).map(|i| f64::from(i) * spacing).map(|t| (t, ((swing(t) + 0.3 * rng.normal()) * 10.0).round() / 10.0)).collect();
+        let last_hour = rows.iter().filter(|(t, _)| *t >= 300.0);
+        assert!(last_hour.filter(|(_, e)| (e - 0.5).abs() > 0.7).count() > 0, "the case is no longer one: none strays");
+        let found = assess(&readings(&rows), None, &Limits::default());
+        assert!(matches!(found.settled, Settled::Since { .. }), "{:?}", found.settled);
+        assert!((found.settle_point.unwrap().0 - 0.5).abs() < 0.05);
+        // The same of a gyro at rest.
+        let at_rest: Vec<(f64, f64)> = rows.iter().map(|(t, e)| (*t, e - swing(*t))).collect();
+        let found = assess(&readings(&at_rest), None, &Limits::default());
+        assert!(matches!(found.settled, Settled::Since { minutes: 0.0 }), "{:?}", found.settled);
+    }
+}

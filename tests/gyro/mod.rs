@@ -1,5 +1,6 @@
 //! Run-ups of gyros.
 
+mod any;
 mod generator;
 mod made;
 mod runups;

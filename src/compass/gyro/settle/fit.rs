@@ -11,6 +11,8 @@ pub const FEWEST: usize = UNKNOWNS + 3;
 const PERIODS_MIN: (f64, f64) = (45.0, 160.0);
 /// Ratios of successive half swings that are looked for.
 const RATIOS: (f64, f64) = (0.02, 0.97);
+/// Readings that the start is sought by, at most (our own).
+const ENOUGH_TO_START: usize = 400;
 /// Least scatter that readings are credited with, degrees: no repeater is read finer (our own).
 pub(super) const LEAST_SCATTER_DEG: f64 = 0.05;
 /// A reading further off than this many scatters has no weight (Tukey's biweight, 95 % efficient for a normal scatter).
@@ -97,7 +99,9 @@ pub fn fit(readings: &[RunUpReading]) -> Option<Swing> {
     if readings.len() < FEWEST {
         return None;
     }
-    let mut starts: Vec<(f64, Unknowns)> = grid().filter_map(|(k, w)| start(readings, k, w)).collect();
+    // Some hundreds of readings tell where to start as well as thousands.
+    let some: Vec<RunUpReading> = readings.iter().step_by(readings.len().div_ceil(ENOUGH_TO_START)).copied().collect();
+    let mut starts: Vec<(f64, Unknowns)> = grid().filter_map(|(k, w)| start(&some, k, w)).collect();
     starts.sort_by(|a, b| a.0.total_cmp(&b.0));
     let refined = starts.into_iter().take(4).filter_map(|(_, u)| refine(readings, u));
     let (scatter, unknowns) = refined.min_by(|a, b| a.0.total_cmp(&b.0))?;

@@ -15,6 +15,8 @@ pub mod standard {
     pub const BAND_DEG: f64 = 0.7;
     /// Minutes over which three readings, half an hour apart, must stay within the band.
     pub const PROOF_MIN: f64 = 60.0;
+    /// Part of many readings that may stray beyond the band by reading alone (our own: the standard has three readings in mind).
+    pub const STRAY: f64 = 0.05;
 }
 
 /// One reading of a run-up.

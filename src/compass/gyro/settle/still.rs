@@ -45,7 +45,7 @@ pub(super) fn still(readings: &[RunUpReading]) -> Option<Still> {
     }
     let errors: Vec<f64> = kept.iter().map(|r| r.error_deg).collect();
     let (mean_deg, sd_deg) = mean_and_sd(&errors);
-    let reach = errors.iter().map(|e| (e - mean_deg).abs()).fold(0.0, f64::max);
+    let reach = reach(&errors, mean_deg);
     let span_min = readings.last().map_or(0.0, |r| r.minutes);
     let drift = line(&kept).0 * span_min;
     let at_rest = drift.abs() < (2.0 * sd_deg).min(standard::BAND_DEG)
@@ -57,6 +57,14 @@ pub(super) fn still(readings: &[RunUpReading]) -> Option<Still> {
         sd_deg,
         set_aside: aside.iter().map(|r| (r.row, r.error_deg - mean_deg)).collect(),
     })
+}
+
+/// How far off the mean the readings are, but for the few of very many that stray by reading alone.
+fn reach(errors: &[f64], mean: f64) -> f64 {
+    let mut off: Vec<f64> = errors.iter().map(|e| (e - mean).abs()).collect();
+    off.sort_by(f64::total_cmp);
+    let stray = (standard::STRAY * off.len() as f64) as usize;
+    off.get(off.len().saturating_sub(1 + stray)).copied().unwrap_or(0.0)
 }
 
 /// Whether neighbours differ as they do where each reading scatters by itself: their mean square is twice the variance, with a relative
