@@ -28,7 +28,9 @@ fn speed(observation: &Observation, worked: &Worked) -> Option<String> {
         return Some("Speed error: none can be reckoned so near the pole.".to_owned());
     };
     let verdict = speed_verdict(observation.gyro_type, observed.value, observed.u_deg(), expected);
-    Some(format!("Speed error at {speed_kn} kn on that course, were the corrector off: {}; {}.", low_high(expected.deg()), verdict.words()))
+    let words = verdict.words();
+    let end = if words.ends_with('?') { "" } else { "." };
+    Some(format!("Speed error at {speed_kn} kn on that course, were the corrector off: {}; {words}{end}", low_high(expected.deg())))
 }
 
 fn gyro(observation: &Observation, worked: &Worked, limits: &Limits) -> Option<String> {

@@ -109,3 +109,19 @@ fn the_chart() {
     assert_eq!((svg.matches("<circle").count(), svg.matches(" z\"").count()), (9, 4));
     assert!(svg.contains("stroke-dasharray") && !svg.contains("NaN") && !svg.contains("-0.0"));
 }
+
+/// The speed error beside an observed one: what it looks like, and what is wanting.
+#[test]
+fn speed_error_beside_an_observation() {
+    let azimuth = |more: &str| {
+        let line = format!("azimuth --utc 2027-03-04T08:00:00Z --lat 50N --lon 5W --body Sun --gyro 113 {more}");
+        shadowpin(&line.split_whitespace().collect::<Vec<_>>(), b"").out
+    };
+    let said = azimuth("--gyro-heading 005 --speed 20");
+    assert!(
+        said.contains("Speed error at 20 kn on that course, were the corrector off: 2.0 H; the error observed looks like it: is the speed corrector on?\n"),
+        "{said}"
+    );
+    assert!(azimuth("--speed 20").contains("Speed error: it goes with the course, so the heading by gyro is needed too.\n"));
+    assert!(!azimuth("--gyro-heading 005").contains("Speed error"));
+}

@@ -87,7 +87,7 @@ impl Swing {
     }
 }
 
-/// Fits a swing; `None` for fewer readings than [`FEWEST`], or where no swing of a gyro's kind goes through them.
+/// Fits a swing; `None` for fewer than eight readings, or where no swing of a gyro's kind goes through them.
 ///
 /// Starts from a grid of periods and ratios, each with its best settle point and amplitude by least squares, scored by the sum of
 /// absolute residuals, which one blunder cannot lead astray; then all five unknowns together with weights that leave a blunder none;
