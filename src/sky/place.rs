@@ -36,8 +36,10 @@ fn frame_of(days: f64) -> [f64; 15] {
 /// Error bound: the sun's is that of [`sun::apparent_place`]; for the others azimuth within 0.02 degrees of JPL DE421 for altitudes
 /// -1 to 60, 1990-2050, UTC taken as UT1 in both (test `published::jpl_bodies`, which prints what it measures).
 ///
-/// Source: earth, precession and nutation by routines of the SOFA collection (IAU 2006/2000A); the moon by the series of Meeus after
-/// Chapront there; planets by VSOP87; stars by the Hipparcos catalogue, new reduction.
+/// Outside those years, to 1900 and to 2100, the planets are held to a rougher theory (test `planets_throughout_against_another_theory`).
+///
+/// Source: precession and nutation by routines of the SOFA collection (IAU 2006/2000A); the moon by the series of Meeus after
+/// Chapront there; earth and planets by VSOP87; stars by the Hipparcos catalogue, new reduction.
 ///
 /// # Example
 /// ```
@@ -115,6 +117,34 @@ mod tests {
         }
         println!("moon {worst_moon:.5}\", planets {worst_planet:.5}\", stars {worst_star:.5}\"");
         assert!(worst_moon < 0.01 && worst_planet < 0.01 && worst_star < 0.01);
+    }
+
+    /// The planets against another theory, rougher but good for a thousand years: they must be right from the first instant that
+    /// is answered to the last. Its own error is 0.08 degrees on the sky at most, Saturn's; its earth is the earth and moon's
+    /// common centre, 0.006 degrees of Venus at her nearest; 0.006 more are aberration, left out here.
+    #[test]
+    fn planets_throughout_against_another_theory() {
+        let (first, last) = (-2_208_988_800_000, 4_133_980_799_999);
+        let ends = (0..200).flat_map(|step| [first + step * 7_000_000, last - step * 158_000_000]);
+        let between = (0..=150).map(|i| first + (last - first) / 150 * i);
+        let mut worst = [0.0_f64; 4];
+        for unix_ms in ends.chain(between) {
+            let utc = UtcInstant::from_unix_ms(unix_ms).unwrap();
+            let days = Tt::from(utc.ut1()).days_j2000();
+            let earth = sofars::eph::plan94(frame::J2000, days, 3).unwrap().0[0];
+            for ((planet, number), worst) in Planet::ALL.into_iter().zip([2, 4, 5, 6]).zip(&mut worst) {
+                let at = |days: f64| sofars::eph::plan94(frame::J2000, days, number).unwrap().0[0];
+                let light_days = frame::length(frame::sum([(1.0, at(days)), (-1.0, earth)])) / frame::LIGHT_AU_PER_DAY;
+                let theirs = frame::sum([(1.0, at(days - light_days)), (-1.0, earth)]);
+                let theirs = at_infinity(frame::turned(&frame::to_equator_of_date(Tt::from_days_j2000(days)), theirs), utc);
+                let ours = apparent_place(Body::Planet(planet), utc);
+                let across = crate::angle::wrap_180_deg(ours.gha_deg - theirs.gha_deg) * ours.declination_deg.to_radians().cos();
+                let apart = across.hypot(ours.declination_deg - theirs.declination_deg);
+                assert!(apart < 0.1, "{planet:?} at {}: {apart} degrees", utc.to_chrono());
+                *worst = worst.max(apart);
+            }
+        }
+        println!("Venus, Mars, Jupiter, Saturn against plan94: {worst:.4?} degrees");
     }
 
     /// Every body has a finite place at both ends of the years answered and between.
