@@ -35,7 +35,7 @@ impl Planet {
 }
 
 /// Other spellings that are in use, by the name that is ours. Common practice. Bayer's names of doubles go without their number. A name that
-/// belongs to two stars is left out: Algenib is Mirfak in some lists, gamma Pegasi in others.
+/// belongs to two stars is left out: Algenib is Mirfak in some lists, gamma Pegasi in others (from memory).
 const SPELLINGS: [(&str, &str); 29] = [
     ("rigilkent", "Rigil Kentaurus"),
     ("alphacentauri", "Rigil Kentaurus"),
@@ -194,6 +194,9 @@ mod tests {
         }
         for body in Body::all() {
             assert_eq!(Body::from_name(body.name()).unwrap(), body);
+        }
+        for (other, name) in SPELLINGS {
+            assert_eq!(Body::from_name(other).unwrap().name(), name, "{other}");
         }
     }
 
