@@ -34,8 +34,9 @@ impl Planet {
     pub const ALL: [Self; 4] = [Self::Venus, Self::Mars, Self::Jupiter, Self::Saturn];
 }
 
-/// Other spellings that are in use, by the name that is ours. Common practice.
-const SPELLINGS: [(&str, &str); 26] = [
+/// Other spellings that are in use, by the name that is ours. Common practice. Bayer's names of doubles go without their number. A name that
+/// belongs to two stars is left out: Algenib is Mirfak in some lists, gamma Pegasi in others (from memory).
+const SPELLINGS: [(&str, &str); 29] = [
     ("rigilkent", "Rigil Kentaurus"),
     ("alphacentauri", "Rigil Kentaurus"),
     ("toliman", "Rigil Kentaurus"),
@@ -51,7 +52,10 @@ const SPELLINGS: [(&str, &str); 26] = [
     ("etamin", "Eltanin"),
     ("eltamin", "Eltanin"),
     ("marfak", "Mirfak"),
-    ("algenib", "Mirfak"),
+    ("alphacen", "Rigil Kentaurus"),
+    ("alphacru", "Acrux"),
+    ("alphalib", "Zubenelgenubi"),
+    ("thetaeri", "Acamar"),
     ("denebkaitos", "Diphda"),
     ("gemma", "Alphecca"),
     ("alphekka", "Alphecca"),
@@ -182,11 +186,17 @@ mod tests {
             ("alpha and", "Alpheratz"),
             ("north star", "Polaris"),
             ("El Nath", "Elnath"),
+            ("Alpha Cen", "Rigil Kentaurus"),
+            ("alpha-1 cru", "Acrux"),
+            ("alpha cru", "Acrux"),
         ] {
             assert_eq!(Body::from_name(text).unwrap_or_else(|e| panic!("{e}")).name(), name, "{text}");
         }
         for body in Body::all() {
             assert_eq!(Body::from_name(body.name()).unwrap(), body);
+        }
+        for (other, name) in SPELLINGS {
+            assert_eq!(Body::from_name(other).unwrap().name(), name, "{other}");
         }
     }
 
@@ -196,6 +206,7 @@ mod tests {
         assert_eq!(hint("Alderbaran"), "is it Aldebaran?");
         assert_eq!(hint("Capela"), "is it Capella?");
         assert_eq!(hint("xyzzy"), "");
+        assert!(Body::from_name("Algenib").is_err(), "two stars have had that name");
         assert!(Body::from_name("").is_err() && Body::from_name("½").is_err());
         assert!(Body::from_name(&"a".repeat(500)).is_err());
     }
