@@ -1,6 +1,6 @@
 //! The first pass: every row fed once, little of it kept.
 
-use super::checks::{row_queries, unrounded};
+use super::checks::{Route, comes_out, row_queries, unrounded};
 use super::fact::{Fact, MOST_COMPASSES};
 use super::fleet::Fleet;
 use super::query::Query;
@@ -47,6 +47,9 @@ pub struct Logbook {
     pub affected: u64,
     /// Rows whose logged errors are off their parts by no more than the readings' own rounding.
     pub unrounded: u64,
+    /// Rows whose logged compass error comes out by the bearing, and by the headings alone.
+    pub by_bearing: u64,
+    pub by_headings_only: u64,
     pub sample: Vec<Kept>,
     /// Of the gyro bearings and of the compass bearings.
     pub gyro_steps: Steps,
@@ -149,13 +152,17 @@ impl Learn {
             }
         };
         self.queries.clear();
-        row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
+        row_queries(row, Route::Either, &self.limits, &mut self.queries, &mut Vec::new());
         let unrounded = unrounded(row, &self.queries);
         let wild = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG);
         let affected =
             !unrounded && (wild || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. })));
         if let Some(vessel) = self.vessels.get_mut(at) {
             vessel.unrounded += u64::from(unrounded);
+            if let Some((by_bearing, either)) = comes_out(row, &self.limits) {
+                vessel.by_bearing += u64::from(by_bearing);
+                vessel.by_headings_only += u64::from(either && !by_bearing);
+            }
             vessel.feed(row, affected);
         }
     }
@@ -179,6 +186,11 @@ fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -
 }
 
 impl Logbook {
+    /// How the vessel works its compass errors.
+    pub fn route(&self) -> Route {
+        if self.by_bearing >= 8 && self.by_headings_only * 5 < self.by_bearing { Route::Bearing } else { Route::Either }
+    }
+
     fn feed(&mut self, row: &Row, affected: bool) {
         let names = row.names;
         // An entry without an observation names no compass of its own.

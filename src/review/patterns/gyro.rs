@@ -100,7 +100,7 @@ fn named(vessel: &Vessel, gyro: &Gyro, run: &Run, limits: &Limits) -> Vec<Patter
             let side = if c < 0.0 { "W" } else { "E" };
             let mut since = None;
             let (id, detail) = match *term {
-                Term::Level => return None,
+                Term::Level | Term::Drift(_) => return None,
                 Term::Repeater(index) => {
                     if size - 3.0 * u < limits.thresholds.repeater_differs_deg {
                         return None;

@@ -38,6 +38,7 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
             before: None,
             after: None,
             earlier: &[],
+            route: vessel.route,
             speed_kn: kept.row().observation.and_then(|o| o.speed_kn),
             limits,
         };
