@@ -2,7 +2,9 @@
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "a test that fails should stop")]
 
 mod commands;
+mod fuzz_replay;
 mod generator;
+mod gyro;
 mod layers;
 mod magnetic;
 mod properties;

@@ -10,6 +10,7 @@ use clap::Args as ClapArgs;
 use shadowpin::compass::{Observation, Target, doubts, work};
 use shadowpin::error::Result;
 use shadowpin::horizon::by_hand;
+use shadowpin::report::against;
 use shadowpin::report::azimuth::AzimuthPage;
 use shadowpin::sky::Body;
 
@@ -50,7 +51,8 @@ pub fn run(args: Args) -> Result<Exit> {
         return Err(reason.into());
     }
     let on_card = args.card.on(&observation, moment.utc)?;
-    let remarks = on_card.iter().flat_map(|card| card.sentences(&worked)).collect();
+    let mut remarks = against::sentences(&observation, &worked, &limits);
+    remarks.extend(on_card.iter().flat_map(|card| card.sentences(&worked)));
     let answer = match args.output.format {
         Format::Text => AzimuthPage {
             body,

@@ -14,6 +14,7 @@ mod plan;
 mod read;
 mod review;
 mod self_check;
+mod settle;
 mod swing;
 mod variation;
 mod when_where;
@@ -39,6 +40,7 @@ enum Command {
     Amplitude(amplitude::Args),
     Plan(plan::Args),
     Review(Box<review::Args>),
+    Settle(settle::Args),
     Columns(columns::Args),
     Limits(limits::Args),
     SelfCheck(self_check::Args),
@@ -73,6 +75,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Amplitude(args) => amplitude::run(args),
         Command::Plan(args) => plan::run(args),
         Command::Review(args) => review::run(*args),
+        Command::Settle(args) => settle::run(args),
         Command::Columns(args) => columns::run(args),
         Command::Limits(args) => limits::run(args),
         Command::SelfCheck(args) => self_check::run(args),

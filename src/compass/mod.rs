@@ -6,6 +6,7 @@ pub mod curve;
 mod direction;
 mod doubts;
 pub mod field;
+pub mod gyro;
 mod observation;
 mod trust;
 mod work;

@@ -1,8 +1,10 @@
 //! Results as text, rows and pictures: content as data in, bytes out. Nothing is computed anew here.
 
+pub mod against;
 pub mod amplitude;
 pub mod azimuth;
 pub mod card;
+pub mod chart;
 mod column;
 pub mod columns;
 mod figure;
@@ -12,6 +14,7 @@ pub mod log_rows;
 pub mod plan;
 pub mod review_text;
 pub mod rows;
+pub mod settle;
 pub mod swing;
 pub mod variation;
 mod words;

@@ -12,6 +12,7 @@ pub fn file(name: &str) -> String {
 }
 
 mod azimuth_table;
+mod gyro_speed;
 mod jpl_bodies;
 mod jpl_rise_set;
 mod jpl_sun;

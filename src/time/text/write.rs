@@ -13,6 +13,12 @@ pub fn date_time(utc: UtcInstant) -> String {
     to_the_second(utc).format("%Y-%m-%d %H:%M:%S").to_string()
 }
 
+/// For a person, to the nearest minute: `2026-06-14 06:13`.
+pub fn to_the_minute(utc: UtcInstant) -> String {
+    let rounded = DateTime::from_timestamp((utc.unix_ms() + 30_000).div_euclid(60_000) * 60, 0).unwrap_or_default();
+    rounded.format("%Y-%m-%d %H:%M").to_string()
+}
+
 /// The clock of a ship that keeps `zone`: `2026-06-14 15:12:30`.
 pub fn ship_date_time(utc: UtcInstant, zone: Zone) -> String {
     let local = to_the_second(utc) + chrono::Duration::minutes(i64::from(zone.clock_offset_minutes()));

@@ -1,0 +1,70 @@
+//! `shadowpin settle`: a gyro's run-up.
+
+use super::exit::Exit;
+use super::instruments::read_limits;
+use super::output::{Format, OutputArgs};
+use super::read;
+use super::when_where::option;
+use clap::Args as ClapArgs;
+use shadowpin::angle::TrueBearing;
+use shadowpin::angle::text::{read_direction, read_latitude};
+use shadowpin::compass::gyro::settle::{Settled, assess};
+use shadowpin::error::{Error, Result};
+use shadowpin::logbook::runup::read_run_up;
+use shadowpin::report::chart;
+use shadowpin::report::settle::SettlePage;
+use std::path::PathBuf;
+
+/// A gyro's run-up: where it settles, and whether it has.
+#[derive(Debug, ClapArgs)]
+#[command(after_help = "Example:\n  shadowpin settle fixtures/runups/runup_00.csv --lat 51-30N\n\n\
+    Rows: utc and gyro_error; or utc and gyro_heading with --true-heading; or utc, lat, lon, body and gyro_bearing.\n\
+    Exit 0 when it has settled and is inside the standard; 1 when not yet, over it, or it cannot be told; 3 when rows could not be used.")]
+pub struct Args {
+    /// The run-up (CSV), or - for standard input
+    #[arg(value_name = "RUNUP")]
+    run_up: PathBuf,
+    /// Latitude, for the limits of the standards
+    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true)]
+    lat: Option<String>,
+    /// The ship's true heading, for rows of gyro headings: alongside, the berth's
+    #[arg(long, value_name = "HEADING")]
+    true_heading: Option<String>,
+    /// Limits file (TOML)
+    #[arg(long, value_name = "FILE")]
+    limits: Option<PathBuf>,
+    /// Draw the run-up into this file (SVG)
+    #[arg(long, value_name = "FILE")]
+    chart: Option<PathBuf>,
+    #[command(flatten)]
+    output: OutputArgs,
+}
+
+/// Judges the run-up and writes the answer.
+pub fn run(args: Args) -> Result<Exit> {
+    if args.output.format == Format::Csv {
+        return Err(Error::Usage("settle answers as text or json".into()));
+    }
+    let limits = read_limits(args.limits.as_deref())?;
+    let true_heading = args.true_heading.as_deref().map(|h| option("--true-heading", read_direction(h))).transpose()?;
+    let latitude = args.lat.as_deref().map(|l| option("--lat", read_latitude(l))).transpose()?.map(|l| l.value);
+    let (name, bytes) = read::content(&args.run_up)?;
+    let run_up = read_run_up(&name, &bytes, true_heading.map(|h| TrueBearing::wrapping_deg(h.value)), &limits)?;
+    let found = assess(&run_up.readings, latitude);
+    let page = SettlePage { run_up: &run_up, found: &found };
+    if let Some(path) = &args.chart {
+        std::fs::write(path, chart::run_up(&page)).map_err(|source| Error::File { path: path.clone(), source })?;
+    }
+    args.output.write(&if args.output.format == Format::Json { page.json() } else { page.text() })?;
+    if !args.output.quiet {
+        run_up.problems.iter().for_each(|problem| eprintln!("{problem}"));
+    }
+    let over =
+        found.settle_point_limit.is_some_and(|(_, inside)| inside == Some(false)) || found.scatter_limit.is_some_and(|(_, inside)| !inside);
+    let settled = matches!(found.settled, Settled::Since { .. });
+    Ok(match (run_up.problems.is_empty(), settled && !over && !found.too_slow) {
+        (false, _) => Exit::Problems,
+        (true, true) => Exit::Clean,
+        (true, false) => Exit::Queries,
+    })
+}

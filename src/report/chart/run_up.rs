@@ -1,0 +1,79 @@
+//! The run-up of a gyro: readings, the swing through them, the settle point and its band.
+
+use super::{Scale, ticks};
+use crate::compass::gyro::settle::standard;
+use crate::report::settle::SettlePage;
+use maud::html;
+use std::fmt::Write as _;
+
+const WIDTH: f64 = 760.0;
+const HEIGHT: f64 = 420.0;
+
+/// The picture. Early swings are large: the scale is cut at twelve degrees either side of the settle point, and readings beyond are
+/// drawn on its edge as open triangles.
+pub fn run_up(page: &SettlePage) -> String {
+    let readings = &page.run_up.readings;
+    let end = readings.last().map_or(1.0, |r| r.minutes).max(1.0);
+    let middle = page.found.settle_point.map_or(0.0, |p| p.0);
+    let reach = readings.iter().map(|r| (r.error_deg - middle).abs()).fold(2.0, f64::max).min(12.0) * 1.05;
+    let x = Scale { from: (0.0, end), to: (70.0, WIDTH - 20.0) };
+    let y = Scale { from: (middle - reach, middle + reach), to: (HEIGHT - 60.0, 40.0) };
+    let inside = |error: f64| error.clamp(middle - reach, middle + reach);
+    let mut curve = String::new();
+    if let Some(swing) = &page.found.swing {
+        for step in 0..=300 {
+            let t = end * f64::from(step) / 300.0;
+            let _ = write!(curve, "{}{},{} ", if step == 0 { "M" } else { "L" }, x.text(t), y.text(inside(swing.error_deg(t))));
+        }
+    }
+    let band = page
+        .found
+        .settle_point
+        .map(|p| (y.text(p.0 + standard::BAND_DEG), y.at(p.0 - standard::BAND_DEG) - y.at(p.0 + standard::BAND_DEG)));
+    let beyond = |error: f64| (error - middle).abs() > reach;
+    let markup = html! {
+        svg xmlns="http://www.w3.org/2000/svg" viewBox={ "0 0 " (WIDTH) " " (HEIGHT) } role="img" aria-labelledby="run-up-title run-up-desc" font-family="sans-serif" font-size="13" fill="currentColor" {
+            title id="run-up-title" { "Run-up of a gyrocompass: gyro error by time" }
+            desc id="run-up-desc" { (page.verdict()) " " (readings.len()) " readings over " (format!("{end:.0}")) " minutes." }
+            rect width=(WIDTH) height=(HEIGHT) fill="#fff" {}
+            g fill="#000" stroke="none" {
+                @if let Some((top, height)) = &band {
+                    rect x=(x.text(0.0)) y=(top) width=(format!("{:.1}", x.at(end) - x.at(0.0))) height=(format!("{height:.1}")) fill="#ddd" {}
+                }
+                @for t in ticks(middle - reach, middle + reach, 8) {
+                    line x1=(x.text(0.0)) x2=(x.text(end)) y1=(y.text(t)) y2=(y.text(t)) stroke="#bbb" stroke-width=(if t == 0.0 { "1.5" } else { "0.5" }) {}
+                    text x="62" y=(format!("{:.1}", y.at(t) + 4.0)) text-anchor="end" { (degrees(t)) }
+                }
+                @for t in ticks(0.0, end, 8) {
+                    line x1=(x.text(t)) x2=(x.text(t)) y1=(format!("{:.1}", HEIGHT - 60.0)) y2=(format!("{:.1}", HEIGHT - 54.0)) stroke="#000" {}
+                    text x=(x.text(t)) y=(format!("{:.1}", HEIGHT - 38.0)) text-anchor="middle" { (format!("{t:.0}")) }
+                }
+                text x=(format!("{:.1}", f64::midpoint(x.at(0.0), x.at(end)))) y=(format!("{:.1}", HEIGHT - 14.0)) text-anchor="middle" { "minutes from the first reading" }
+                text x="14" y="22" { "gyro error, degrees: L low (east), H high (west)" }
+                path d=(curve.trim_end()) fill="none" stroke="#000" stroke-width="1.5" {}
+                @for r in readings {
+                    @let (px, py) = (x.text(r.minutes), y.text(inside(r.error_deg)));
+                    @if page.found.swing.as_ref().is_some_and(|s| s.set_aside.iter().any(|(row, _)| *row == r.row)) {
+                        g stroke="#000" stroke-width="2" {
+                            path d={ "M" (px) "," (py) " m-5,-5 l10,10 m-10,0 l10,-10" } {}
+                        }
+                    } @else if beyond(r.error_deg) {
+                        path d={ "M" (px) "," (py) (if r.error_deg > middle { " m-5,6 l5,-9 l5,9 z" } else { " m-5,-6 l5,9 l5,-9 z" }) } fill="#fff" stroke="#000" {}
+                    } @else {
+                        circle cx=(px) cy=(py) r="3.5" fill="#fff" stroke="#000" stroke-width="1.5" {}
+                    }
+                }
+            }
+        }
+    };
+    markup.into_string() + "\n"
+}
+
+fn degrees(t: f64) -> String {
+    let size = format!("{:.0}", t.abs());
+    match t {
+        t if t > 0.0 => format!("{size} L"),
+        t if t < 0.0 => format!("{size} H"),
+        _ => "0".to_owned(),
+    }
+}
