@@ -7,7 +7,7 @@ use super::query::Query;
 use super::row::{CardFigure, Logged, Names, Row};
 use super::vessel::Vessel;
 use crate::angle::Reading;
-use crate::compass::{GyroType, Observation, Place, Worked};
+use crate::compass::{GyroType, Observation, Worked, work};
 use crate::limits::Limits;
 use crate::time::{Moment, Zone};
 use std::collections::HashMap;
@@ -15,7 +15,7 @@ use std::collections::HashMap;
 /// Rows of a vessel that are looked at for a copy.
 const RECENT: usize = 64;
 /// Affected rows of a vessel that are kept whole.
-const SAMPLE: usize = 32;
+const SAMPLE: usize = 24;
 /// Figures of a vessel's logged variation, and of its deviation against a card, that are kept.
 const FIGURES: usize = 512;
 /// Rows that room is made for at the least.
@@ -93,36 +93,38 @@ impl Steps {
     }
 }
 
-/// A row kept whole.
+/// A row kept whole, as it was written: it is worked again when it is looked at.
 #[derive(Debug, Clone)]
 pub struct Kept {
     order: u64,
     number: u64,
-    moment: Option<Moment>,
-    place: Option<Place>,
     zone: Option<Zone>,
     observation: Observation,
     logged: Logged,
     card: Option<CardFigure>,
-    worked: Worked,
     /// Index of gyro and repeater among the vessel's.
     pub gyro: u8,
 }
 
 impl Kept {
+    /// The row worked.
+    pub fn work(&self, limits: &Limits) -> Worked {
+        work(&self.observation, None, limits)
+    }
+
     /// The row again, without names.
-    pub fn row(&self) -> Row<'_> {
+    pub fn row<'a>(&'a self, worked: &'a Worked) -> Row<'a> {
         Row {
             number: self.number,
             names: Names { vessel: "", gyro: "", repeater: "", magnetic_compass: "" },
-            moment: self.moment,
-            place: self.place,
+            moment: self.observation.moment,
+            place: self.observation.place,
             zone: self.zone,
             observation: Some(&self.observation),
             remarks: "",
             logged: &self.logged,
             card: self.card,
-            worked: &self.worked,
+            worked,
         }
     }
 }
@@ -242,19 +244,7 @@ impl Logbook {
             };
         }
         let at = self.sample.partition_point(|k| k.order < order);
-        let worked = Worked { notices: Vec::new(), ..row.worked.clone() };
-        let kept = Kept {
-            order,
-            number: row.number,
-            moment: row.moment,
-            place: row.place,
-            zone: row.zone,
-            observation: *observation,
-            logged: *row.logged,
-            card: row.card,
-            worked,
-            gyro,
-        };
+        let kept = Kept { order, number: row.number, zone: row.zone, observation: *observation, logged: *row.logged, card: row.card, gyro };
         self.sample.insert(at, kept);
     }
 
