@@ -9,7 +9,7 @@ use super::pattern::PatternId;
 use super::query::{Instrument, Query};
 use super::row::Row;
 use super::run::Term;
-use super::slip::Explanation;
+use super::slip::{Explanation, Slip};
 use super::vessel::Vessel;
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
@@ -39,7 +39,13 @@ impl Verdict {
         };
         let slip = match self.slips.first() {
             Some(Explanation { slip, place, with: None, .. }) => {
-                format!(" Could {}? It looks to be {}.", slip.words(), place.words())
+                // What the sun's azimuth cannot show is said, so that nobody looks for it there.
+                let unseen = if matches!(slip, Slip::DayAhead | Slip::DayBehind | Slip::Year) {
+                    " The sun's azimuth hardly shows it: it is the order of the entries, the moon and the stars that do."
+                } else {
+                    ""
+                };
+                format!(" Could {}? It looks to be {}.{unseen}", slip.words(), place.words())
             }
             Some(Explanation { slip, with: Some((second, _)), .. }) => {
                 format!(" No single slip explains it; could {}, and {}?", slip.words(), second.words())

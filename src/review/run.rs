@@ -3,7 +3,6 @@
 use super::fact::{Fact, flag};
 use super::pattern::PatternId;
 use super::robust::{self, Fit, median, scale_about_zero, scale_of_neighbours};
-use crate::limits::Limits;
 
 /// Something a gyro's error may follow.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -119,7 +118,7 @@ pub struct Run {
 
 impl Run {
     /// The run through `facts` (of one gyro, in the order of time); `None` where there is none to be found.
-    pub fn of(facts: &[&Fact], repeaters: &[u8], sides: bool, _limits: &Limits) -> Option<Self> {
+    pub fn of(facts: &[&Fact], repeaters: &[u8], sides: bool) -> Option<Self> {
         let step = facts.len().div_ceil(MOST_ROWS).max(1);
         let facts: Vec<&Fact> = facts.iter().copied().step_by(step).collect();
         if facts.len() < LEAST_ROWS {

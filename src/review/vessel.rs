@@ -68,7 +68,7 @@ impl Vessel {
     pub fn of(mut book: Logbook, limits: &Limits) -> Self {
         order::mark(&mut book.facts, limits);
         book.facts.shrink_to_fit();
-        let runs = runs(&book, limits);
+        let runs = runs(&book);
         let curves = curves(&book, &runs);
         let mut vessel = Self {
             name: std::mem::take(&mut book.name),
@@ -170,7 +170,7 @@ impl Vessel {
 }
 
 /// Gyros by name, each with its run over all its repeaters.
-fn runs(book: &Logbook, limits: &Limits) -> Vec<Gyro> {
+fn runs(book: &Logbook) -> Vec<Gyro> {
     let mut uses = vec![0_usize; book.gyros.len()];
     for fact in book.facts.iter().filter(|f| f.gyro_error_deg().is_some()) {
         if let Some(n) = uses.get_mut(usize::from(fact.gyro)) {
@@ -192,7 +192,7 @@ fn runs(book: &Logbook, limits: &Limits) -> Vec<Gyro> {
         facts.sort_by_key(|f| f.seconds());
         // With the repeater written, the side of the ship says nothing more.
         let sides = gyro.repeaters.len() == 1 && book.gyros.iter().all(|(_, repeater)| repeater.is_empty());
-        gyro.run = Run::of(&facts, &gyro.repeaters, sides, limits);
+        gyro.run = Run::of(&facts, &gyro.repeaters, sides);
     }
     gyros
 }
