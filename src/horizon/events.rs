@@ -2,6 +2,7 @@
 
 use super::amplitude::{HorizonLine, RisingOrSetting};
 use super::crossing::{self, Crossing};
+use super::direct;
 use super::observer::{altitude_deg, geocentric_altitude_deg};
 use crate::angle::Position;
 use crate::sky::ApparentPlace;
@@ -112,6 +113,18 @@ pub fn previous_event(
 
 /// The crossing nearest to `about`, within half of [`DAY_SPAN_S`] either way; otherwise as [`next_event`].
 pub fn nearest_event(
+    place: impl Fn(UtcInstant) -> ApparentPlace,
+    position: Position,
+    target: Target,
+    event: RisingOrSetting,
+    about: UtcInstant,
+) -> Search {
+    direct::nearest(&place, position, target, event, about)
+        .map_or_else(|| nearest_along(&place, position, target, event, about), Search::At)
+}
+
+/// The same by a search along the day.
+pub(super) fn nearest_along(
     place: impl Fn(UtcInstant) -> ApparentPlace,
     position: Position,
     target: Target,

@@ -2,6 +2,7 @@
 
 mod amplitude;
 mod crossing;
+mod direct;
 mod events;
 mod hand;
 mod ladder;

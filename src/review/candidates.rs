@@ -105,12 +105,12 @@ const RECORD: [Place; 2] = [Place::Record, Place::RecordFollowed];
 const WORKING: [Place; 1] = [Place::Working];
 
 /// The slips in readings, in results and in an azimuth once worked: no other time, place or body is looked at.
-pub fn slips_at_hand(row: &Row, sight: &Sight) -> Vec<Candidate> {
+pub fn slips_at_hand(row: &Row, sight: &Sight, context: &Context) -> Vec<Candidate> {
     let mut list = List { found: Vec::with_capacity(128), sight };
     azimuths(&mut list);
     bearings(&mut list);
     headings(&mut list);
-    results(row, &mut list);
+    results(row, context, &mut list);
     list.found
 }
 
@@ -369,7 +369,7 @@ fn headings(list: &mut List) {
     }
 }
 
-fn results(row: &Row, list: &mut List) {
+fn results(row: &Row, context: &Context, list: &mut List) {
     let logged = row.logged;
     let with = |edit: fn(&mut Results)| {
         let mut results = Results::default();
@@ -417,7 +417,7 @@ fn results(row: &Row, list: &mut List) {
     }
     list.add(Slip::Arithmetic, &WORKING, &sums);
     // Any other figure: as many forms as there are degrees in the circle.
-    let (gyro, compass, deviation) = super::evidence::wrong_by(row);
+    let (gyro, compass, deviation) = super::evidence::wrong_by(row, context.route);
     for results in [
         gyro.map(|by| Results { gyro_by: by, ..Results::default() }),
         compass.map(|by| Results { compass_by: by, ..Results::default() }),

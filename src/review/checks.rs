@@ -34,7 +34,7 @@ pub fn dark_from_deg(body: Body, limits: &Limits) -> Option<f64> {
 }
 
 /// Adds the queries that `row` raises by itself, and notices that go with them.
-pub fn row_queries(row: &Row, limits: &Limits, queries: &mut Vec<Query>, notices: &mut Vec<Notice>) {
+pub fn row_queries(row: &Row, route: Route, limits: &Limits, queries: &mut Vec<Query>, notices: &mut Vec<Notice>) {
     if row.observation.is_none() {
         queries.extend(reason(row));
         return;
@@ -47,7 +47,7 @@ pub fn row_queries(row: &Row, limits: &Limits, queries: &mut Vec<Query>, notices
             queries.push(Query::AzimuthDiffers { by_deg, most_deg });
         }
     }
-    for (sum, by_deg, step_deg) in sums(row).into_iter().flatten() {
+    for (sum, by_deg, step_deg) in sums(row, route).into_iter().flatten() {
         let most_deg = limits.thresholds.arithmetic_deg.max(step_deg / 2.0 + 0.05);
         // A tenth of a rounding stands on the edge: figures in tenths are compared in tenths.
         if by_deg.abs() > most_deg + 1e-6 {
@@ -114,8 +114,26 @@ fn azimuth_off_deg(row: &Row) -> Option<f64> {
     Some(wrap_180_deg(azimuth - row.worked.true_azimuth?.deg()))
 }
 
+/// Which way the officers of a vessel work the compass error where a bearing was read on the magnetic compass.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub enum Route {
+    /// By the bearing or by the headings: either will do.
+    #[default]
+    Either,
+    /// By the bearing, as on nearly all entries: that it comes out by the headings is chance.
+    Bearing,
+}
+
+/// Whether the logged compass error comes out by the bearing, and by the headings; `None` where one of them cannot be told.
+pub fn comes_out(row: &Row, limits: &Limits) -> Option<(bool, bool)> {
+    let bearing = sums(row, Route::Bearing).get(1).copied().flatten()?;
+    let either = sums(row, Route::Either).get(1).copied().flatten()?;
+    let fits = |by: f64| by.abs() <= limits.thresholds.arithmetic_deg;
+    Some((fits(bearing.1), fits(either.1)))
+}
+
 /// Each logged error less what its own logged parts give, with the step it is written in.
-pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
+pub fn sums(row: &Row, route: Route) -> [Option<(Sum, f64, f64)>; 3] {
     let logged = row.logged;
     let Some(observation) = row.observation else { return [None; 3] };
     let charted = match observation.target {
@@ -136,10 +154,9 @@ pub fn sums(row: &Row) -> [Option<(Sum, f64, f64)>; 3] {
             .zip(observation.compass_heading)
             .map(|((error, gyro), compass)| gyro.value.deg() + error.deg - compass.value.deg()),
     );
-    // Either route will do.
     let compass = match (by_bearing, by_headings) {
-        (Some(a), Some(b)) => Some(if b.0.abs() < a.0.abs() { b } else { a }),
-        (Some(a), None) => Some(a),
+        (Some(a), Some(b)) if route == Route::Either => Some(if b.0.abs() < a.0.abs() { b } else { a }),
+        (Some(a), _) => Some(a),
         // A bearing read, and no azimuth to work it with: nothing to compare with.
         (None, b) => b.filter(|_| observation.compass_bearing.is_none()),
     };

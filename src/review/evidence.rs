@@ -1,7 +1,7 @@
 //! All that a row and its neighbours say, against what a slip would have made of it.
 
 use super::case::{Case, Look, Memo, Sight};
-use super::checks::{dark_from_deg, sums, written_u_deg};
+use super::checks::{Route, dark_from_deg, sums, written_u_deg};
 use super::curve::Curve;
 use super::fact::Fact;
 use super::order::miles;
@@ -26,6 +26,8 @@ pub struct Context<'a> {
     pub after: Option<&'a Fact>,
     /// A few rows before it.
     pub earlier: &'a [Fact],
+    /// How the vessel works its compass errors.
+    pub route: Route,
     /// Speed written on the row, knots.
     pub speed_kn: Option<f64>,
     pub limits: &'a Limits,
@@ -129,9 +131,9 @@ impl Left {
 }
 
 /// By how much each logged error is off what its parts give, degrees.
-pub fn wrong_by(row: &Row) -> (Option<f64>, Option<f64>, Option<f64>) {
+pub fn wrong_by(row: &Row, route: Route) -> (Option<f64>, Option<f64>, Option<f64>) {
     let mut by = (None, None, None);
-    for (sum, off, _) in sums(row).into_iter().flatten() {
+    for (sum, off, _) in sums(row, route).into_iter().flatten() {
         let slot = match sum {
             Sum::GyroError => &mut by.0,
             Sum::CompassError => &mut by.1,
@@ -144,7 +146,7 @@ pub fn wrong_by(row: &Row) -> (Option<f64>, Option<f64>, Option<f64>) {
 
 /// What the subtractions alone leave of the row as it stands: no slip in time, place or body changes that where the azimuth is
 /// written.
-pub fn left_of_sums(row: &Row) -> f64 {
+pub fn left_of_sums(row: &Row, route: Route) -> f64 {
     if row.logged.azimuth.is_none() {
         return 0.0;
     }
@@ -152,7 +154,7 @@ pub fn left_of_sums(row: &Row) -> f64 {
     let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Written>)| {
         sum.zip(figure).map_or(0.0, |((_, by, _), f)| (by / PAPER_U_DEG.hypot(written_u_deg(f))).powi(2))
     };
-    sums(row).into_iter().zip(figures).map(squares).sum()
+    sums(row, route).into_iter().zip(figures).map(squares).sum()
 }
 
 /// A row with all that is the same whatever slip is tried.
@@ -311,7 +313,7 @@ impl<'a> Ground<'a> {
                 .map(|((e, g), c)| r.compass_sign * wrap_180_deg(g + e.deg - c) + r.compass_by);
             let off = |parts: Option<f64>| parts.map(|p| wrap_180_deg(error.deg - p));
             let off = match (off(compass_error), off(by_headings)) {
-                (Some(a), Some(b)) if b.abs() < a.abs() => Some(b),
+                (Some(a), Some(b)) if b.abs() < a.abs() && self.context.route == Route::Either => Some(b),
                 (a, b) => a.or(b),
             };
             left.angle(off, self.us.compass_error, 0.0);

@@ -2,6 +2,7 @@
 
 use super::candidates::{Candidate, slips_at_hand, slips_of_the_sky};
 use super::case::{Case, Sight};
+use super::checks::Route;
 use super::evidence::{Context, Ground, Left, left_of_sums};
 use super::row::Row;
 use super::slip::{Explanation, Place, Slip};
@@ -66,10 +67,10 @@ pub fn explain(row: &Row, context: &Context, gain: f64) -> Vec<Explanation> {
     };
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
     let most = most_left(EVIDENCE);
-    let mut list = slips_at_hand(row, &sight);
+    let mut list = slips_at_hand(row, &sight, context);
     let mut tried = search.each(&list, most);
     // No slip in time, place or body mends a subtraction.
-    if left_of_sums(row) <= most {
+    if left_of_sums(row, context.route) <= most {
         let more = slips_of_the_sky(row, &sight, context);
         tried.extend(search.each(&more, most));
         list.extend(more);
@@ -77,7 +78,7 @@ pub fn explain(row: &Row, context: &Context, gain: f64) -> Vec<Explanation> {
     let good = |t: &&Tried| serves(t.raw, t.count) && t.total() + gain < none;
     if !tried.iter().any(|t| good(&t)) {
         // Two together: now whatever a single one leaves counts.
-        if left_of_sums(row) > most {
+        if left_of_sums(row, context.route) > most {
             list.extend(slips_of_the_sky(row, &sight, context));
         }
         tried = search.each(&list, f64::INFINITY);
@@ -140,9 +141,18 @@ impl Search<'_> {
 /// The gyro error of `row` with that slip undone, degrees.
 pub fn gyro_error_without(row: &Row, slip: Slip, place: Place, limits: &Limits) -> Option<f64> {
     let sight = Sight::of(row, limits)?;
-    let context =
-        Context { gyro: (0.0, 2.0), curve: None, variation_off_deg: 0.0, before: None, after: None, earlier: &[], speed_kn: None, limits };
-    let mut list = slips_at_hand(row, &sight);
+    let context = Context {
+        gyro: (0.0, 2.0),
+        curve: None,
+        variation_off_deg: 0.0,
+        before: None,
+        after: None,
+        earlier: &[],
+        route: Route::Either,
+        speed_kn: None,
+        limits,
+    };
+    let mut list = slips_at_hand(row, &sight, &context);
     list.extend(slips_of_the_sky(row, &sight, &context));
     let candidate = list.into_iter().find(|c| c.slip == slip && c.place == place)?;
     let so = candidate.made(&Case::plain(sight))?.so;

@@ -1,6 +1,6 @@
 //! The second pass: one row against what the fleet's rows say together.
 
-use super::checks::{row_queries, unrounded};
+use super::checks::{Route, row_queries, unrounded};
 use super::explain::{GAIN, explain};
 use super::fact::{Fact, flag};
 use super::fleet::Fleet;
@@ -9,7 +9,7 @@ use super::pattern::PatternId;
 use super::query::{Instrument, Query};
 use super::row::Row;
 use super::run::Term;
-use super::slip::Explanation;
+use super::slip::{Explanation, Slip};
 use super::vessel::Vessel;
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
@@ -39,7 +39,13 @@ impl Verdict {
         };
         let slip = match self.slips.first() {
             Some(Explanation { slip, place, with: None, .. }) => {
-                format!(" Could {}? It looks to be {}.", slip.words(), place.words())
+                // What the sun's azimuth cannot show is said, so that nobody looks for it there.
+                let unseen = if matches!(slip, Slip::DayAhead | Slip::DayBehind | Slip::Year) {
+                    " The sun's azimuth hardly shows it: it is the order of the entries, the moon and the stars that do."
+                } else {
+                    ""
+                };
+                format!(" Could {}? It looks to be {}.{unseen}", slip.words(), place.words())
             }
             Some(Explanation { slip, with: Some((second, _)), .. }) => {
                 format!(" No single slip explains it; could {}, and {}?", slip.words(), second.words())
@@ -55,8 +61,9 @@ impl Verdict {
 pub fn judge(row: &Row, fleet: &Fleet) -> Verdict {
     let limits = &fleet.limits;
     let mut verdict = Verdict::default();
-    row_queries(row, limits, &mut verdict.queries, &mut verdict.notices);
     let found = fleet.vessel(row.names.vessel).and_then(|v| Some((v, v.place_of(row.number)?)));
+    let route = found.map_or(Route::Either, |(vessel, _)| vessel.route);
+    row_queries(row, route, limits, &mut verdict.queries, &mut verdict.notices);
     let Some((vessel, at)) = found else { return verdict };
     let Some(fact) = vessel.facts.get(at) else { return verdict };
     order(row, vessel, at, fact, limits, &mut verdict);
@@ -173,7 +180,10 @@ fn compass(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, verdict: &m
     let by_deg = wrap_180_deg(deviation.value.deg() - expected);
     let most_deg = t.off_card_deg.max(t.out_of_run_sigma * scatter.max(deviation.u_deg()));
     let on_days = !card || by_deg.abs() > t.off_card_once_deg || vessel.off_card_days.contains(&fact.compass());
-    if by_deg.abs() > most_deg && on_days {
+    let constant_deg = if card { vessel.constant_a_deg(fact.compass()) } else { 0.0 };
+    if by_deg.abs() > most_deg && (by_deg - constant_deg).abs() <= most_deg {
+        verdict.patterns.push(PatternId::ConstantA);
+    } else if by_deg.abs() > most_deg && on_days {
         verdict.queries.push(Query::OffCard { by_deg, most_deg, card });
     }
 }
@@ -244,7 +254,12 @@ fn limits_of_errors(row: &Row, vessel: &Vessel, fact: &Fact, limits: &Limits, ve
     }
     if let Some(deviation) = row.worked.deviation.or(row.worked.deviation_by_comparison) {
         let (error_deg, u_deg, limit_deg) = (deviation.value.deg(), deviation.u_deg(), t.deviation_deg);
-        if error_deg.abs() - 2.0 * u_deg > limit_deg {
+        let constant_deg = vessel.constant_a_deg(fact.compass());
+        if error_deg.abs() - 2.0 * u_deg > limit_deg && (error_deg - constant_deg).abs() - 2.0 * u_deg <= limit_deg {
+            if !verdict.patterns.contains(&PatternId::ConstantA) {
+                verdict.patterns.push(PatternId::ConstantA);
+            }
+        } else if error_deg.abs() - 2.0 * u_deg > limit_deg {
             verdict.queries.push(Query::OverLimit { instrument: Instrument::MagneticCompass, error_deg, u_deg, limit_deg });
         } else if error_deg.abs() > limit_deg {
             verdict.notices.push(Notice::MayBeOverLimit { error_deg, limit_deg });

@@ -1,13 +1,13 @@
 //! The first pass: every row fed once, little of it kept.
 
-use super::checks::{row_queries, unrounded};
+use super::checks::{Route, comes_out, row_queries, unrounded};
 use super::fact::{Fact, MOST_COMPASSES};
 use super::fleet::Fleet;
 use super::query::Query;
 use super::row::{CardFigure, Logged, Names, Row};
 use super::vessel::Vessel;
 use crate::angle::Reading;
-use crate::compass::{GyroType, Observation, Place, Worked};
+use crate::compass::{GyroType, Observation, Worked, work};
 use crate::limits::Limits;
 use crate::time::{Moment, Zone};
 use std::collections::HashMap;
@@ -15,7 +15,7 @@ use std::collections::HashMap;
 /// Rows of a vessel that are looked at for a copy.
 const RECENT: usize = 64;
 /// Affected rows of a vessel that are kept whole.
-const SAMPLE: usize = 32;
+const SAMPLE: usize = 24;
 /// Figures of a vessel's logged variation, and of its deviation against a card, that are kept.
 const FIGURES: usize = 512;
 /// Rows that room is made for at the least.
@@ -47,6 +47,9 @@ pub struct Logbook {
     pub affected: u64,
     /// Rows whose logged errors are off their parts by no more than the readings' own rounding.
     pub unrounded: u64,
+    /// Rows whose logged compass error comes out by the bearing, and by the headings alone.
+    pub by_bearing: u64,
+    pub by_headings_only: u64,
     pub sample: Vec<Kept>,
     /// Of the gyro bearings and of the compass bearings.
     pub gyro_steps: Steps,
@@ -90,36 +93,38 @@ impl Steps {
     }
 }
 
-/// A row kept whole.
+/// A row kept whole, as it was written: it is worked again when it is looked at.
 #[derive(Debug, Clone)]
 pub struct Kept {
     order: u64,
     number: u64,
-    moment: Option<Moment>,
-    place: Option<Place>,
     zone: Option<Zone>,
     observation: Observation,
     logged: Logged,
     card: Option<CardFigure>,
-    worked: Worked,
     /// Index of gyro and repeater among the vessel's.
     pub gyro: u8,
 }
 
 impl Kept {
+    /// The row worked.
+    pub fn work(&self, limits: &Limits) -> Worked {
+        work(&self.observation, None, limits)
+    }
+
     /// The row again, without names.
-    pub fn row(&self) -> Row<'_> {
+    pub fn row<'a>(&'a self, worked: &'a Worked) -> Row<'a> {
         Row {
             number: self.number,
             names: Names { vessel: "", gyro: "", repeater: "", magnetic_compass: "" },
-            moment: self.moment,
-            place: self.place,
+            moment: self.observation.moment,
+            place: self.observation.place,
             zone: self.zone,
             observation: Some(&self.observation),
             remarks: "",
             logged: &self.logged,
             card: self.card,
-            worked: &self.worked,
+            worked,
         }
     }
 }
@@ -149,13 +154,17 @@ impl Learn {
             }
         };
         self.queries.clear();
-        row_queries(row, &self.limits, &mut self.queries, &mut Vec::new());
+        row_queries(row, Route::Either, &self.limits, &mut self.queries, &mut Vec::new());
         let unrounded = unrounded(row, &self.queries);
         let wild = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG);
         let affected =
             !unrounded && (wild || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. })));
         if let Some(vessel) = self.vessels.get_mut(at) {
             vessel.unrounded += u64::from(unrounded);
+            if let Some((by_bearing, either)) = comes_out(row, &self.limits) {
+                vessel.by_bearing += u64::from(by_bearing);
+                vessel.by_headings_only += u64::from(either && !by_bearing);
+            }
             vessel.feed(row, affected);
         }
     }
@@ -179,6 +188,11 @@ fn index<T>(names: &mut Vec<T>, same: impl Fn(&T) -> bool, make: impl FnOnce() -
 }
 
 impl Logbook {
+    /// How the vessel works its compass errors.
+    pub fn route(&self) -> Route {
+        if self.by_bearing >= 8 && self.by_headings_only * 5 < self.by_bearing { Route::Bearing } else { Route::Either }
+    }
+
     fn feed(&mut self, row: &Row, affected: bool) {
         let names = row.names;
         // An entry without an observation names no compass of its own.
@@ -230,19 +244,7 @@ impl Logbook {
             };
         }
         let at = self.sample.partition_point(|k| k.order < order);
-        let worked = Worked { notices: Vec::new(), ..row.worked.clone() };
-        let kept = Kept {
-            order,
-            number: row.number,
-            moment: row.moment,
-            place: row.place,
-            zone: row.zone,
-            observation: *observation,
-            logged: *row.logged,
-            card: row.card,
-            worked,
-            gyro,
-        };
+        let kept = Kept { order, number: row.number, zone: row.zone, observation: *observation, logged: *row.logged, card: row.card, gyro };
         self.sample.insert(at, kept);
     }
 

@@ -119,6 +119,7 @@ fn constant_a(vessel: &mut Vessel, book: &Logbook, limits: &Limits) {
                 if a < 0.0 { "W" } else { "E" },
                 if with_card { "against the card" } else { "where a compass in adjustment has about nil" }
             );
+            vessel.constant_a.push((at as u8, a));
             vessel.patterns.push(Pattern { id, detail, since: None });
             return;
         }

@@ -3,7 +3,6 @@
 use super::fact::{Fact, flag};
 use super::pattern::PatternId;
 use super::robust::{self, Fit, median, scale_about_zero, scale_of_neighbours};
-use crate::limits::Limits;
 
 /// Something a gyro's error may follow.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -22,6 +21,8 @@ pub enum Term {
     OnHorizon,
     /// Starboard against port.
     Side,
+    /// Days since this time, seconds of [`Fact::seconds`]: a slow drift.
+    Drift(i64),
     /// A step at this time, seconds of [`Fact::seconds`].
     Step(i64),
 }
@@ -37,6 +38,7 @@ impl Term {
             Self::Altitude => fact.tan_altitude(),
             Self::OnHorizon => fact.on_horizon(),
             Self::Side => (yes(fact.has(flag::STARBOARD)) - yes(fact.has(flag::PORT))) / 2.0,
+            Self::Drift(from) => fact.seconds().map_or(0.0, |t| (t - from) as f64 / 86_400.0),
             Self::Step(at) => yes(fact.seconds().is_some_and(|t| t >= at)),
         }
     }
@@ -44,7 +46,8 @@ impl Term {
     /// The pattern that it is named by.
     pub fn pattern(self) -> Option<PatternId> {
         match self {
-            Self::Level => None,
+            // A drift needs no name: the run goes with it.
+            Self::Level | Self::Drift(_) => None,
             Self::Repeater(_) | Self::Side => Some(PatternId::RepeaterDiffers),
             Self::Speed => Some(PatternId::SpeedCorrectorOff),
             Self::Latitude => Some(PatternId::LatitudeCorrectorOff),
@@ -59,6 +62,7 @@ impl Term {
         match self {
             Self::Level | Self::Step(_) | Self::Repeater(_) => 3.0,
             Self::Speed => 1.5,
+            Self::Drift(_) => 0.1,
             Self::Latitude | Self::Altitude | Self::OnHorizon | Self::Side => 2.0,
         }
     }
@@ -77,6 +81,7 @@ impl Term {
             Self::Altitude => (0.6, 0.6),
             Self::OnHorizon => (0.35, 0.35),
             Self::Side => (0.8, 0.8),
+            Self::Drift(_) => (0.005, 0.5),
             Self::Step(_) => (1.0, 1.0),
         }
     }
@@ -113,7 +118,7 @@ pub struct Run {
 
 impl Run {
     /// The run through `facts` (of one gyro, in the order of time); `None` where there is none to be found.
-    pub fn of(facts: &[&Fact], repeaters: &[u8], sides: bool, _limits: &Limits) -> Option<Self> {
+    pub fn of(facts: &[&Fact], repeaters: &[u8], sides: bool) -> Option<Self> {
         let step = facts.len().div_ceil(MOST_ROWS).max(1);
         let facts: Vec<&Fact> = facts.iter().copied().step_by(step).collect();
         if facts.len() < LEAST_ROWS {
@@ -205,7 +210,8 @@ fn left(terms: &[Term], fit: &Fit, facts: &[&Fact], noise: f64) -> f64 {
 /// The terms that stand out in the residuals.
 fn standing_out(have: &[Term], facts: &[&Fact], residuals: &[f64], noise: f64, sides: bool) -> Vec<Term> {
     let mut found = Vec::new();
-    for term in [Term::Speed, Term::Latitude, Term::Altitude, Term::OnHorizon, Term::Side] {
+    let drift = Term::Drift(facts.first().and_then(|f| f.seconds()).unwrap_or(0));
+    for term in [Term::Speed, Term::Latitude, Term::Altitude, Term::OnHorizon, Term::Side, drift] {
         if have.contains(&term) || (term == Term::Side && !sides) {
             continue;
         }

@@ -1,5 +1,6 @@
 //! What all rows of a vessel say together.
 
+use super::checks::Route;
 use super::curve::Curve;
 use super::evidence::{Context, UNKNOWN_GYRO};
 use super::fact::{Fact, flag};
@@ -52,6 +53,10 @@ pub struct Vessel {
     pub variation_off: (f64, f64),
     /// The slip made on nearly all affected rows.
     pub throughout: Option<(Slip, Place)>,
+    /// How it works its compass errors.
+    pub route: Route,
+    /// Compasses whose deviation is off by a constant, degrees; against the card where one is given.
+    pub constant_a: Vec<(u8, f64)>,
     /// The pattern that errors worked from finer readings belong to, where that is the habit.
     pub unrounded: Option<PatternId>,
     /// Compasses whose deviation was off a given card on three separate days.
@@ -63,7 +68,7 @@ impl Vessel {
     pub fn of(mut book: Logbook, limits: &Limits) -> Self {
         order::mark(&mut book.facts, limits);
         book.facts.shrink_to_fit();
-        let runs = runs(&book, limits);
+        let runs = runs(&book);
         let curves = curves(&book, &runs);
         let mut vessel = Self {
             name: std::mem::take(&mut book.name),
@@ -78,6 +83,8 @@ impl Vessel {
             not_evaluated: Vec::new(),
             variation_off: (0.0, 0.0),
             throughout: None,
+            route: book.route(),
+            constant_a: Vec::new(),
             unrounded: None,
             off_card_days: off_card_days(&book, limits),
         };
@@ -134,6 +141,11 @@ impl Vessel {
         constant - row.worked.field.map_or(0.0, |f| f.annual.variation_deg * years)
     }
 
+    /// The constant that a magnetic compass's deviation is off by, degrees; 0 where none is named.
+    pub fn constant_a_deg(&self, compass: u8) -> f64 {
+        self.constant_a.iter().find(|c| c.0 == compass).map_or(0.0, |c| c.1)
+    }
+
     /// The curve of a magnetic compass.
     pub fn curve(&self, compass: u8) -> Option<&Curve> {
         self.curves.get(usize::from(compass))?.as_ref()
@@ -150,6 +162,7 @@ impl Vessel {
             before: earlier_rows.iter().rev().find(sound),
             after: self.facts.get(at + 1..).unwrap_or_default().iter().find(sound),
             earlier: earlier_rows.get(at.saturating_sub(EARLIER)..).unwrap_or_default(),
+            route: self.route,
             speed_kn: None,
             limits,
         }
@@ -157,7 +170,7 @@ impl Vessel {
 }
 
 /// Gyros by name, each with its run over all its repeaters.
-fn runs(book: &Logbook, limits: &Limits) -> Vec<Gyro> {
+fn runs(book: &Logbook) -> Vec<Gyro> {
     let mut uses = vec![0_usize; book.gyros.len()];
     for fact in book.facts.iter().filter(|f| f.gyro_error_deg().is_some()) {
         if let Some(n) = uses.get_mut(usize::from(fact.gyro)) {
@@ -179,7 +192,7 @@ fn runs(book: &Logbook, limits: &Limits) -> Vec<Gyro> {
         facts.sort_by_key(|f| f.seconds());
         // With the repeater written, the side of the ship says nothing more.
         let sides = gyro.repeaters.len() == 1 && book.gyros.iter().all(|(_, repeater)| repeater.is_empty());
-        gyro.run = Run::of(&facts, &gyro.repeaters, sides, limits);
+        gyro.run = Run::of(&facts, &gyro.repeaters, sides);
     }
     gyros
 }

@@ -79,6 +79,12 @@ pub struct Ship {
     /// Share of a step's size, and the share of the voyage it falls at.
     pub step_deg: f64,
     pub step_at: f64,
+    /// Slow drift of the gyro, degrees a day.
+    pub drift_deg_per_day: f64,
+    /// Part of B that goes as the tangent of the inclination: vertical soft iron, degrees.
+    pub induced_deg: f64,
+    /// Part of B that goes as 25,000 nT over the horizontal field: permanent magnetism, degrees.
+    pub permanent_deg: f64,
     pub eye_height_m: f64,
     pub start_unix_s: i64,
     pub start: (f64, f64),
@@ -112,6 +118,9 @@ impl Ship {
             stale_variation_deg: if kind == Kind::StaleVariation { rng.sign() * rng.between(1.6, 2.6) } else { 0.0 },
             step_deg: rng.sign() * rng.between(2.0, 3.0),
             step_at: rng.between(0.35, 0.65),
+            drift_deg_per_day: 0.0,
+            induced_deg: 0.0,
+            permanent_deg: 0.0,
             eye_height_m: rng.between(12.0, 30.0).round(),
             // Some day of 2025 to 2028.
             start_unix_s: 1_735_689_600 + (rng.between(0.0, 1400.0) * 86_400.0) as i64,

@@ -20,11 +20,13 @@ pub struct Style {
     pub compass_noise_deg: f64,
     /// Share of observations with a slip.
     pub slips: f64,
+    /// Bearings of charted marks are taken when the sky is hidden.
+    pub marks: bool,
 }
 
 impl Default for Style {
     fn default() -> Self {
-        Self { entries: 260, resolution_deg: 0.5, gyro_noise_deg: 0.3, compass_noise_deg: 0.7, slips: 0.06 }
+        Self { entries: 260, resolution_deg: 0.5, gyro_noise_deg: 0.3, compass_noise_deg: 0.7, slips: 0.06, marks: true }
     }
 }
 
@@ -205,6 +207,12 @@ pub fn voyage(ship: &Ship, style: Style) -> Vec<Entry> {
         let mut entry = blank(ship, now, zone_h, lat, lon, speed, rng);
         let overcast = rng.chance(0.25);
         let chosen = if overcast { None } else { choose(now, lat, lon, rng) };
+        if style.marks && chosen.is_none() && rng.chance(0.3) {
+            transit(ship, &mut entry, (wander, local, after_step), course, style, rng);
+            house(ship, &mut entry);
+            entries.push(entry);
+            continue;
+        }
         let Some((body, method, at)) = chosen else {
             let up = seen(Body::Sun, now, lat, lon).is_some_and(|(_, a)| a > 62.0);
             if !overcast && rng.chance(0.3) {
@@ -274,6 +282,7 @@ fn gyro_error(ship: &Ship, entry: &Entry, wander: f64, after_step: bool, course:
     let speed_error = -entry.speed_kn * course.to_radians().cos() / (5.0 * std::f64::consts::PI * entry.lat.to_radians().cos());
     ship.gyro_level_deg
         + wander
+        + ship.drift_deg_per_day * (entry.unix_s - ship.start_unix_s) as f64 / 86_400.0
         + match ship.kind {
             Kind::CorrectorOff => speed_error,
             Kind::CorrectorDoubled => -speed_error,
@@ -281,6 +290,15 @@ fn gyro_error(ship: &Ship, entry: &Entry, wander: f64, after_step: bool, course:
             Kind::Step if after_step => ship.step_deg,
             _ => 0.0,
         }
+}
+
+/// A to E there: what the earth's field makes of the ship's iron.
+fn coefficients(ship: &Ship, entry: &Entry) -> [f64; 5] {
+    let [a, mut b, c, d, e] = ship.coefficients;
+    if let Ok(field) = field::field(position(entry.lat, entry.lon), instant(entry.unix_s), 0.0) {
+        b += ship.induced_deg * field.inclination_deg.to_radians().tan() + ship.permanent_deg * (25_000.0 / field.horizontal_nt - 1.0);
+    }
+    [a, b, c, d, e]
 }
 
 fn variation_deg(entry: &Entry) -> f64 {
@@ -291,9 +309,10 @@ fn variation_deg(entry: &Entry) -> f64 {
 fn headings(ship: &Ship, entry: &mut Entry, error: f64, magnetic: f64, course: f64, style: Style, rng: &mut Rng) -> f64 {
     let yaw = rng.normal(0.4);
     // The compass heading that shows this true course: two rounds of the fixed point are enough for a smooth curve.
+    let coefficients = coefficients(ship, entry);
     let mut heading = course - magnetic;
     for _ in 0..4 {
-        heading = course - magnetic - deviation_deg(ship.coefficients, heading);
+        heading = course - magnetic - deviation_deg(coefficients, heading);
     }
     entry.gyro_heading = Some(round_bearing(course - error + yaw, style.resolution_deg));
     entry.compass_heading = Some(round_bearing(heading + yaw + rng.normal(0.4), style.resolution_deg));
@@ -305,6 +324,30 @@ fn comparison(ship: &Ship, entry: &mut Entry, wander: f64, after_step: bool, cou
     let error = gyro_error(ship, entry, wander, after_step, course);
     let magnetic = variation_deg(entry);
     headings(ship, entry, error, magnetic, course, style, rng);
+}
+
+/// A range or a lighthouse on a charted bearing.
+fn transit(ship: &Ship, entry: &mut Entry, (wander, local, after_step): (f64, f64, bool), course: f64, style: Style, rng: &mut Rng) {
+    let charted = tenth(rng.between(0.0, 359.9));
+    entry.method = "transit";
+    entry.mark = Some((rng.pick(&["Gull Rock light", "entrance range", "Skerry beacon"]), charted));
+    let magnetic = variation_deg(entry);
+    let error = gyro_error(ship, entry, wander, after_step, course);
+    let heading = headings(ship, entry, error, magnetic + local, course, style, rng);
+    let deviation = deviation_deg(coefficients(ship, entry), heading);
+    let side =
+        if matches!(ship.kind, Kind::RepeaterDiffers | Kind::WingDiffers) && wrap_180_deg(charted - course) > 0.0 { 1.6 } else { 0.0 };
+    if ship.kind == Kind::RepeaterDiffers {
+        entry.repeater = if side > 0.0 { "starboard" } else { "port" };
+    }
+    let noise = if ship.kind == Kind::Invented { (0.02, 0.05) } else { (style.gyro_noise_deg, style.compass_noise_deg) };
+    let steady = if ship.kind == Kind::Invented { wander } else { 0.0 };
+    entry.gyro_bearing = Some(round_bearing(charted - error + steady - side + rng.normal(noise.0), style.resolution_deg));
+    entry.compass_bearing = Some(round_bearing(charted - magnetic - local - deviation + rng.normal(noise.1), style.resolution_deg));
+    let variation = tenth(magnetic + ship.stale_variation_deg + rng.normal(0.08));
+    write_results(entry, charted, variation);
+    // A chart gives the bearing; no azimuth is worked.
+    entry.azimuth = None;
 }
 
 /// Takes the bearings and works them as a careful officer does.
@@ -347,7 +390,7 @@ fn observe(ship: &Ship, entry: &mut Entry, (wander, local, after_step): (f64, f6
         if ship.kind == Kind::Invented { (0.02, 0.05) } else { (style.gyro_noise_deg, style.compass_noise_deg) };
     let gyro_wander = if ship.kind == Kind::Invented { wander } else { 0.0 };
     let gyro = azimuth - error + gyro_wander - sighting + tilt + rng.normal(gyro_noise);
-    let compass = azimuth - magnetic - local - deviation_deg(ship.coefficients, heading) + tilt + rng.normal(compass_noise);
+    let compass = azimuth - magnetic - local - deviation_deg(coefficients(ship, entry), heading) + tilt + rng.normal(compass_noise);
     let gyro = round_bearing(gyro, style.resolution_deg);
     let compass = round_bearing(compass, style.resolution_deg);
     let worked = wrap_360_deg(tenth(worked));

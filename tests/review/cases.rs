@@ -192,6 +192,36 @@ fn headings_compared_are_judged_by_the_gyros_run() {
     assert_eq!(verdicts[at].slips[0].slip.id(), "reciprocal");
 }
 
+/// From 50 N to 50 S and back, with iron that shows it: B runs from +6 to -2.
+#[test]
+fn a_change_with_magnetic_latitude_is_physics() {
+    for seed in 1..5 {
+        let mut ship = Ship::draw("Saltmarsh", Kind::Good, (-50.0, 50.0), &mut Rng::new(seed));
+        (ship.induced_deg, ship.permanent_deg) = (-1.5, 1.5);
+        ship.coefficients[1] = 0.0;
+        let rows = read(&csv(&Log::of(&[ship], Style { slips: 0.0, entries: 400, ..Style::default() }, false), Columns::default()));
+        let (fleet, verdicts) = review(&rows, &Limits::default());
+        let off: usize = verdicts.iter().filter(|v| ids(v).contains(&"off-card")).count();
+        assert_eq!(off, 0, "seed {seed}");
+        assert_eq!(fleet.patterns("Saltmarsh").count(), 0, "seed {seed}");
+    }
+}
+
+/// A degree and a half in a month: the run goes with it, and nothing else is seen in it.
+#[test]
+fn slow_drift_is_neither_a_query_nor_a_step() {
+    for (seed, drift) in [(1, 0.05), (2, -0.05), (3, 0.05), (4, -0.03)] {
+        let mut ship = Ship::draw("Saltmarsh", Kind::Good, (-50.0, 50.0), &mut Rng::new(seed));
+        (ship.drift_deg_per_day, ship.gyro_level_deg) = (drift, -15.0 * drift);
+        let rows = read(&csv(&Log::of(&[ship], Style { slips: 0.0, ..Style::default() }, false), Columns::default()));
+        let (fleet, verdicts) = review(&rows, &Limits::default());
+        let asked: Vec<_> = verdicts.iter().flat_map(|v| &v.queries).filter(|q| q.id() != "over-limit").collect();
+        assert!(asked.is_empty(), "seed {seed}: {asked:?}");
+        let found: Vec<&str> = fleet.patterns("Saltmarsh").map(|p| p.id()).collect();
+        assert!(found.is_empty(), "seed {seed}: {found:?}");
+    }
+}
+
 #[test]
 fn readings_to_whole_degrees_are_never_too_regular() {
     let ship = Ship::draw("Saltmarsh", Kind::Invented, (-50.0, 50.0), &mut Rng::new(5));

@@ -14,6 +14,8 @@ const LEAST_ROWS: usize = 12;
 const LEAST_SPEED_SPREAD_DEG: f64 = 0.8;
 /// Spread of tan latitude, and of tan altitude, from which an effect can be told.
 const LEAST_TAN_SPREAD: f64 = 0.5;
+/// Correlation from which two things go together too nearly to be told apart.
+const TOGETHER: f64 = 0.8;
 /// Rows at a rising or setting above latitude 15, from which an effect can be told.
 const LEAST_ON_HORIZON: usize = 6;
 
@@ -58,6 +60,16 @@ fn spread(mut values: Vec<f64>) -> f64 {
     }
 }
 
+/// How nearly tan latitude and time go together: the size of their correlation.
+fn together(facts: &[&Fact]) -> f64 {
+    let points: Vec<(f64, f64)> = facts.iter().filter_map(|f| Some((f.seconds()? as f64, f.tan_lat()))).collect();
+    let n = points.len() as f64;
+    let (mx, my) = points.iter().fold((0.0, 0.0), |(a, b), p| (a + p.0 / n, b + p.1 / n));
+    let (xx, xy, yy) =
+        points.iter().map(|p| (p.0 - mx, p.1 - my)).fold((0.0, 0.0, 0.0), |s, (x, y)| (s.0 + x * x, s.1 + x * y, s.2 + y * y));
+    if xx > 0.0 && yy > 0.0 { (xy / (xx * yy).sqrt()).abs() } else { 0.0 }
+}
+
 /// Why a pattern cannot be judged.
 fn cannot(id: PatternId, facts: &[&Fact], run: Option<&Run>, book: &Logbook) -> Option<String> {
     if facts.len() < LEAST_ROWS {
@@ -76,7 +88,12 @@ fn cannot(id: PatternId, facts: &[&Fact], run: Option<&Run>, book: &Logbook) -> 
         }
         PatternId::LatitudeCorrectorOff if book.other_gyro => Some("not a spinning gyro: it has no latitude error".to_owned()),
         PatternId::LatitudeCorrectorOff => {
-            (spread(facts.iter().map(|f| f.tan_lat()).collect()) < LEAST_TAN_SPREAD).then(|| "the latitudes differ too little".to_owned())
+            if spread(facts.iter().map(|f| f.tan_lat()).collect()) < LEAST_TAN_SPREAD {
+                return Some("the latitudes differ too little".to_owned());
+            }
+            let drifts = run.is_some_and(|r| r.terms.iter().any(|t| matches!(t, Term::Drift(_))));
+            (drifts && together(facts) > TOGETHER)
+                .then(|| "the latitude changed steadily with time, and a slow drift would look the same".to_owned())
         }
         PatternId::AzimuthCircleTilt => (spread(facts.iter().map(|f| f.tan_altitude()).collect()) < LEAST_TAN_SPREAD)
             .then(|| "all bodies stood about equally high".to_owned()),
@@ -100,7 +117,7 @@ fn named(vessel: &Vessel, gyro: &Gyro, run: &Run, limits: &Limits) -> Vec<Patter
             let side = if c < 0.0 { "W" } else { "E" };
             let mut since = None;
             let (id, detail) = match *term {
-                Term::Level => return None,
+                Term::Level | Term::Drift(_) => return None,
                 Term::Repeater(index) => {
                     if size - 3.0 * u < limits.thresholds.repeater_differs_deg {
                         return None;

@@ -25,23 +25,26 @@ pub fn find(vessel: &mut Vessel, book: &Logbook, limits: &Limits) -> Option<Stri
     }
     let mut counts: Vec<(Slip, Place, usize, usize)> = Vec::new();
     for kept in &book.sample {
+        let worked = kept.work(limits);
+        let row = kept.row(&worked);
         let known = |gyro: u8| {
             let run = vessel.gyro_of(gyro)?.run.as_ref().filter(|r| r.established() && r.scatter_deg < 1.0)?;
             (run.coefficient(0).0.abs() < 5.0).then_some(())?;
-            Some(vessel.place_of(kept.row().number).and_then(|at| vessel.expected(at, gyro)))?
+            Some(vessel.place_of(row.number).and_then(|at| vessel.expected(at, gyro)))?
         };
         // Neighbours with the same slip say nothing of order and track.
         let context = Context {
             gyro: known(kept.gyro).unwrap_or(UNKNOWN_GYRO),
             curve: None,
-            variation_off_deg: vessel.variation_off_deg(&kept.row()),
+            variation_off_deg: vessel.variation_off_deg(&row),
             before: None,
             after: None,
             earlier: &[],
-            speed_kn: kept.row().observation.and_then(|o| o.speed_kn),
+            route: vessel.route,
+            speed_kn: row.observation.and_then(|o| o.speed_kn),
             limits,
         };
-        for (rank, e) in explain(&kept.row(), &context, 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
+        for (rank, e) in explain(&row, &context, 0.0).iter().filter(|e| e.with.is_none()).enumerate() {
             match counts.iter_mut().find(|c| c.0 == e.slip && c.1 == e.place) {
                 Some(count) => (count.2, count.3) = (count.2 + 1, count.3 + rank),
                 None => counts.push((e.slip, e.place, 1, rank)),
@@ -80,7 +83,7 @@ fn level_without_it(vessel: &mut Vessel, book: &Logbook, slip: Slip, place: Plac
             .sample
             .iter()
             .filter(|k| vessel.gyros.get(usize::from(k.gyro)).is_some_and(|g| g.0 == *name))
-            .filter_map(|k| super::super::explain::gyro_error_without(&k.row(), slip, place, limits))
+            .filter_map(|k| super::super::explain::gyro_error_without(&k.row(&k.work(limits)), slip, place, limits))
             .collect();
         let n = errors.len();
         gyro.run = median(&mut errors).filter(|_| n >= 4).map(|level| {
