@@ -13,6 +13,7 @@ use super::log::Cells;
 use crate::angle::Reading;
 use crate::angle::text::ErrorSign;
 use crate::compass::{Observation, Place};
+use crate::error::BadValue;
 use crate::time::text::DateOrder;
 use crate::time::{Moment, Zone};
 use std::borrow::Cow;
@@ -118,7 +119,7 @@ struct Reader<'a, C> {
 }
 
 impl<'a, C: Cells> Reader<'a, C> {
-    /// The cell where it is not blank; a decimal comma is read as a point where the log has them.
+    /// The cell where it is not blank.
     fn cell(&self, column: Column) -> Option<Cow<'a, str>> {
         let text = self.cells.text(column);
         if text.is_empty() {
@@ -127,21 +128,54 @@ impl<'a, C: Cells> Reader<'a, C> {
         Some(text)
     }
 
-    /// The cell as figures are written.
+    /// The cell, a decimal comma as a point where the log has them.
     fn figure(&self, column: Column) -> Option<Cow<'a, str>> {
         let text = self.cell(column)?;
-        if self.read_as.decimal_comma && text.contains(',') { Some(Cow::Owned(text.replace(',', "."))) } else { Some(text) }
+        if !self.read_as.decimal_comma || !text.contains(',') {
+            return Some(text);
+        }
+        Some(Cow::Owned(if column == Column::Position { commas_within_figures(&text) } else { text.replace(',', ".") }))
     }
 
     /// The value of a cell that is not blank; a fault where it cannot be read.
-    fn read<T>(&mut self, column: Column, read: impl FnOnce(&str) -> Result<T, crate::error::BadValue>) -> Option<T> {
+    fn read<T>(&mut self, column: Column, read: impl FnOnce(&str) -> Result<T, BadValue>) -> Option<T> {
         let text = self.figure(column)?;
         match read(&text) {
             Ok(value) => Some(value),
-            Err(bad) => {
+            Err(mut bad) => {
+                if self.read_as.decimal_comma {
+                    // As it stands in the log, not as it was read.
+                    bad.value = BadValue::new(&self.cell(column).unwrap_or_default(), "").value;
+                }
                 self.faults.add(column, bad);
                 None
             }
         }
+    }
+}
+
+/// In a position a comma may also part latitude and longitude: only one between two figures is a decimal one.
+fn commas_within_figures(text: &str) -> String {
+    let mut out = String::with_capacity(text.len());
+    let mut rest = text;
+    while let Some((before, behind)) = rest.split_once(',') {
+        out.push_str(before);
+        let within = before.ends_with(|c: char| c.is_ascii_digit()) && behind.starts_with(|c: char| c.is_ascii_digit());
+        out.push(if within { '.' } else { ',' });
+        rest = behind;
+    }
+    out.push_str(rest);
+    out
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_comma_in_a_position() {
+        assert_eq!(commas_within_figures("36-05,8S, 130-33,6E"), "36-05.8S, 130-33.6E");
+        assert_eq!(commas_within_figures("-36,096 130,56"), "-36.096 130.56");
+        assert_eq!(commas_within_figures(",36,"), ",36,");
     }
 }

@@ -5,6 +5,9 @@ use std::borrow::Cow;
 
 /// Anything that has cells under the log's columns: a row of a file, or options of a command line.
 pub trait Cells {
+    /// Whether there is such a column, blank or not.
+    fn has(&self, column: Column) -> bool;
+
     /// The cell as it stands, untrimmed; blank where there is none.
     fn bytes(&self, column: Column) -> &[u8];
 

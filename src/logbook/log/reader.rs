@@ -19,6 +19,10 @@ pub struct LogRow<'r> {
 }
 
 impl Cells for LogRow<'_> {
+    fn has(&self, column: Column) -> bool {
+        self.header.place(column).is_some()
+    }
+
     fn bytes(&self, column: Column) -> &[u8] {
         self.header.place(column).and_then(|i| self.record.cell(i)).unwrap_or_default()
     }
