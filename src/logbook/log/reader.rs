@@ -48,6 +48,9 @@ impl<R: Read> LogReader<R> {
         let mut records = Records::new(source)?;
         let mut titles = Record::default();
         let content = |line, message: String| Error::Content { file: name.to_owned(), line, message };
+        if records.unusable_separator {
+            return Err(content(1, "sep= names nothing that can part cells: a comma, semicolon, tab, | ^ or ~ was expected".into()));
+        }
         if !records.next(&mut titles)? {
             return Err(content(0, "the file is empty: a header with the columns' names was expected".into()));
         }
