@@ -8,4 +8,4 @@ mod record;
 pub use cells::{Cells, readable};
 pub use header::Header;
 pub use reader::{LogReader, LogRow};
-pub use record::{LONGEST_ROW, Record};
+pub use record::{LONGEST_ROW, MOST_CELLS, Record};

@@ -2,7 +2,7 @@
 
 use super::cells::Cells;
 use super::header::Header;
-use super::record::{Record, Records};
+use super::record::{LONGEST_ROW, MOST_CELLS, Record, Records};
 use crate::error::{Error, Result};
 use crate::logbook::columns::Column;
 use std::io::Read;
@@ -53,6 +53,10 @@ impl<R: Read> LogReader<R> {
         }
         if !records.next(&mut titles)? {
             return Err(content(0, "the file is empty: a header with the columns' names was expected".into()));
+        }
+        if titles.too_long {
+            let message = format!("the header is longer than {LONGEST_ROW} bytes or {MOST_CELLS} cells: is a quote never closed?");
+            return Err(content(titles.line, message));
         }
         let header = Header::read(titles.cells(), again).map_err(|message| content(titles.line, message))?;
         Ok(Self { records, rows: 0, titles, header })

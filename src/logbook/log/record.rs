@@ -8,7 +8,7 @@ use std::io::Read;
 /// The longest row that is read, bytes; a longer one is most likely a quote that was never closed.
 pub const LONGEST_ROW: usize = 1 << 20;
 /// The most cells that a row may have.
-const MOST_CELLS: usize = 1 << 12;
+pub const MOST_CELLS: usize = 1 << 12;
 /// What a line `sep=` may name: bytes that stand in no figure, time or name of ours.
 const SEPARATORS: &[u8] = b",;\t|^~";
 /// Bytes read at a time.
@@ -22,7 +22,7 @@ pub struct Record {
     used: usize,
     /// Line of the file on which the row begins, from 1.
     pub line: u64,
-    /// Whether the row was longer than [`LONGEST_ROW`]: its cells are lost.
+    /// Whether the row was longer than [`LONGEST_ROW`], or had more than [`MOST_CELLS`]: its cells are lost.
     pub too_long: bool,
 }
 
