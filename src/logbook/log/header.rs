@@ -1,6 +1,6 @@
 //! The header of a log: which column stands where.
 
-use crate::error::edits;
+use crate::error::{BadValue, edits};
 use crate::logbook::columns::{ADDED, Column};
 
 /// Where each column stands, and which stand there that are not ours to read.
@@ -47,7 +47,7 @@ impl Header {
         header.usable(&names)?;
         let nearly = names.iter().enumerate().filter_map(|(at, name)| Some((at + 1, name, header.nearly(name)?.info().name)));
         header.hints = nearly
-            .map(|(at, name, ours)| format!("column {at}, {name}, is carried through unread; is it {ours}? then rename it"))
+            .map(|(at, name, ours)| format!("column {at}, {}, is carried through unread; is it {ours}? then rename it", shown(name)))
             .collect();
         Ok(header)
     }
@@ -62,10 +62,11 @@ impl Header {
         if Column::ALL.iter().any(|c| c.info().name == name) {
             return None;
         }
-        let lacking = || Column::ALL.iter().copied().filter(|c| !self.has(*c));
-        lacking()
-            .find(|c| plain(c.info().name) == plain(name))
-            .or_else(|| lacking().find(|c| c.info().name.len() >= 8 && edits(&plain(name), &plain(c.info().name)) <= 2))
+        let distance = |c: &Column| edits(&plain(name), &plain(c.info().name));
+        // The nearest of all: where the log has that one already, another of the same name is meant to stand beside it.
+        let nearest = Column::ALL.iter().copied().min_by_key(distance)?;
+        let slips = if nearest.info().name.len() >= 8 { 2 } else { 0 };
+        (distance(&nearest) <= slips && !self.has(nearest)).then_some(nearest)
     }
 
     fn has(&self, column: Column) -> bool {
@@ -104,15 +105,15 @@ impl Header {
         } else {
             return Ok(());
         };
-        let near: Vec<&str> = names
+        let near: Vec<String> = names
             .iter()
             .filter(|name| !name.is_empty() && missing.1.iter().any(|wanted| *name != wanted && like(name, wanted)))
-            .map(String::as_str)
+            .map(|name| shown(name))
             .collect();
         let hint = if names.iter().any(|n| n.contains('\0')) {
             "; the file looks like UTF-16 without a mark: save it as UTF-8".to_owned()
         } else if near.is_empty() {
-            format!("; the columns are {}", names.iter().filter(|n| !n.is_empty()).map(String::as_str).collect::<Vec<_>>().join(", "))
+            format!("; the columns are {}", names.iter().filter(|n| !n.is_empty()).map(|n| shown(n)).collect::<Vec<_>>().join(", "))
         } else {
             format!("; is it {}? rename the column", near.join(" or "))
         };
@@ -124,6 +125,11 @@ impl Header {
 fn like(name: &str, wanted: &str) -> bool {
     let (name, wanted) = (plain(name), plain(wanted));
     name.contains(&wanted) || (wanted.contains(&name) && name.len() >= 3) || edits(&name, &wanted) * 3 <= wanted.len()
+}
+
+/// A name as messages show it: cut to a printable length, and nothing in it that could steer a terminal.
+fn shown(name: &str) -> String {
+    BadValue::new(name, "").value
 }
 
 /// A name without what parts its words.
