@@ -172,6 +172,28 @@ fn commas_within_figures(text: &str) -> String {
 mod tests {
     use super::*;
 
+    /// A row that holds every column's example.
+    struct Examples;
+
+    impl Cells for Examples {
+        fn has(&self, _: Column) -> bool {
+            true
+        }
+
+        fn bytes(&self, column: Column) -> &[u8] {
+            column.info().example.as_bytes()
+        }
+    }
+
+    #[test]
+    fn the_examples_can_be_read_and_agree() {
+        let mut faults = Faults::default();
+        let entry = read_entry(&Examples, ReadAs::default(), &mut faults);
+        assert!(faults.is_empty(), "{}", faults.in_one());
+        assert!(entry.observation.is_some_and(|o| o.gyro_bearing.is_some() && o.speed_kn.is_some() && o.heel_deg == Some(-2.0)));
+        assert!(entry.logged.gyro_error.is_some_and(|e| e.value == 0.5));
+    }
+
     #[test]
     fn a_comma_in_a_position() {
         assert_eq!(commas_within_figures("36-05,8S, 130-33,6E"), "36-05.8S, 130-33.6E");
