@@ -12,7 +12,7 @@ use super::columns::Column;
 use super::log::Cells;
 use crate::angle::Reading;
 use crate::angle::text::ErrorSign;
-use crate::compass::{Observation, Place};
+use crate::compass::{HorizonKind, Observation, Place, Target};
 use crate::error::BadValue;
 use crate::time::text::DateOrder;
 use crate::time::{Moment, Zone};
@@ -73,8 +73,10 @@ pub struct Entry<'r> {
 
 /// Reads one row. Every fault is put into `faults`; what can be read in spite of them is read.
 ///
-/// A fault in what the direction is reckoned from (time, place, body, method, horizon, charted bearing) leaves the row without an
-/// observation; one in a reading or a logged figure leaves that figure blank. A row that says nothing could be had is never at fault.
+/// A fault in what the direction is reckoned from (time, place, body, method, horizon and limb, the height of eye on the visible horizon,
+/// charted bearing), or in what would change its meaning if a default stood there (kind of gyro, where the ship was), leaves the row
+/// without an observation; one in a reading or a logged figure leaves that figure blank. Either stands in the column `problem`. A row
+/// that says nothing could be had is never at fault.
 pub fn read_entry<'r>(cells: &'r impl Cells, read_as: ReadAs, faults: &mut Faults) -> Entry<'r> {
     let mut reader = Reader { cells, read_as, faults };
     let mut entry = Entry {
@@ -102,6 +104,9 @@ pub fn read_entry<'r>(cells: &'r impl Cells, read_as: ReadAs, faults: &mut Fault
     let target = method.and_then(|m| reader.target(m));
     entry.logged = reader.logged();
     let observation = reader.readings();
+    if matches!(target, Some(Target::OnHorizon { horizon: HorizonKind::Visible(_), .. })) {
+        reader.faults.need(Column::EyeHeight);
+    }
     entry.observation = target.filter(|_| !reader.faults.essential()).map(|target| Observation {
         target,
         moment: entry.moment,
@@ -192,6 +197,37 @@ mod tests {
         assert!(faults.is_empty(), "{}", faults.in_one());
         assert!(entry.observation.is_some_and(|o| o.gyro_bearing.is_some() && o.speed_kn.is_some() && o.heel_deg == Some(-2.0)));
         assert!(entry.logged.gyro_error.is_some_and(|e| e.value == 0.5));
+    }
+
+    #[test]
+    fn a_height_of_eye_is_needed_on_the_visible_horizon_only() {
+        struct Row(&'static str);
+        impl Cells for Row {
+            fn has(&self, _: Column) -> bool {
+                true
+            }
+
+            fn bytes(&self, column: Column) -> &[u8] {
+                let text = match column {
+                    Column::Utc => "2026-06-13T22:16Z",
+                    Column::Position => "36-05.8S 130-33.6E",
+                    Column::Body => "Sun",
+                    Column::Method => "rising",
+                    Column::Horizon => self.0,
+                    Column::EyeHeight => "18 m",
+                    _ => "",
+                };
+                text.as_bytes()
+            }
+        }
+        let worked = |row: &Row| {
+            let mut faults = Faults::default();
+            let entry = read_entry(row, ReadAs::default(), &mut faults);
+            assert_eq!(faults.iter().count(), 1);
+            entry.observation.is_some()
+        };
+        assert!(worked(&Row("celestial")));
+        assert!(!worked(&Row("visible")));
     }
 
     #[test]
