@@ -59,7 +59,8 @@ impl Header {
 
     /// The column that an unread one is probably meant for: the same letters, or in a longer name a slip or two.
     fn nearly(&self, name: &str) -> Option<Column> {
-        if Column::ALL.iter().any(|c| c.info().name == name) {
+        // A name many times longer than any of ours is none of ours.
+        if name.len() > 60 || Column::ALL.iter().any(|c| c.info().name == name) {
             return None;
         }
         let distance = |c: &Column| edits(&plain(name), &plain(c.info().name));
