@@ -12,7 +12,7 @@ use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::entry::{Entry, Faults, ReadAs, read_entry};
-use shadowpin::logbook::log::{LONGEST_ROW, LogReader, LogRow, Record};
+use shadowpin::logbook::log::{LONGEST_ROW, LogReader, LogRow, MOST_CELLS, Record};
 use shadowpin::report::log_rows::{LogRows, RowsAs};
 use shadowpin::report::review_text;
 use shadowpin::report::rows::RowFigures;
@@ -102,7 +102,11 @@ pub fn run(args: Args) -> Result<Exit> {
     let cards = args.card.as_deref().map(|path| read::content(path).and_then(|(name, bytes)| read_cards(&name, &bytes))).transpose()?;
     let review = Review::new(&args, &limits, cards.as_ref());
     let name = input.name.clone();
-    let fleet = review.learn(LogReader::new(input.rewound()?, &name, args.again)?)?;
+    let log = LogReader::new(input.rewound()?, &name, args.again)?;
+    if !args.quiet {
+        log.header.hints.iter().for_each(|hint| eprintln!("{name}, line {}: {hint}", log.titles.line));
+    }
+    let fleet = review.learn(log)?;
     let mut out = RowsOut::open(args.output.as_deref())?;
     let (tally, problems) = review.judge(LogReader::new(input.rewound()?, &name, args.again)?, &fleet, &mut out)?;
     out.finish()?;
@@ -181,7 +185,8 @@ impl<'a> Review<'a> {
             return None;
         }
         if row.record.too_long {
-            let bad = BadValue::new("longer", format!("a row of at most {LONGEST_ROW} bytes")).hint("is a quote never closed?");
+            let bad = BadValue::new("longer", format!("a row of at most {LONGEST_ROW} bytes and {MOST_CELLS} cells"));
+            let bad = bad.hint("is a quote never closed?");
             faults.add_row("row", bad);
             return None;
         }

@@ -2,7 +2,7 @@
 
 use super::rows::{RowFigures, push_json_text};
 use crate::logbook::columns::ADDED;
-use crate::logbook::log::Record;
+use crate::logbook::log::{Record, readable};
 
 /// Form of the rows.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -21,18 +21,24 @@ pub struct LogRows {
     /// Columns of the input that are left out, for ours take their place.
     replaced: Vec<usize>,
     titles: Vec<String>,
-    /// Line end of CSV rows.
+    /// Number of columns of the input.
     width: usize,
 }
 
 impl LogRows {
     /// A writer for rows under `titles`, of which those at `replaced` are left out.
     pub fn new(form: RowsAs, delimiter: u8, titles: &Record, replaced: &[usize]) -> Self {
-        let names = titles.cells().enumerate().map(|(i, c)| match String::from_utf8_lossy(c).trim() {
-            "" => format!("column {}", i + 1),
-            name => name.to_owned(),
-        });
-        Self { form, delimiter, replaced: replaced.to_vec(), titles: names.collect(), width: titles.width() }
+        let mut names: Vec<String> = Vec::with_capacity(titles.width());
+        for (i, title) in titles.cells().enumerate() {
+            // A member of an object stands once: a column without a name, or with one that was there before, goes by its place.
+            let name = match readable(title).trim() {
+                "" => format!("column {}", i + 1),
+                name if names.iter().any(|before| before == name) => format!("{name} (column {})", i + 1),
+                name => name.to_owned(),
+            };
+            names.push(name);
+        }
+        Self { form, delimiter, replaced: replaced.to_vec(), titles: names, width: titles.width() }
     }
 
     /// Appends the header; nothing for JSON Lines. `names_separator` repeats the input's first line `sep=`.
@@ -94,7 +100,7 @@ impl LogRows {
             out.push(b':');
             match record.cell(index).unwrap_or_default() {
                 [] => out.extend_from_slice(b"null"),
-                cell => push_json_text(out, &String::from_utf8_lossy(cell)),
+                cell => push_json_text(out, &readable(cell)),
             }
         }
         if first {

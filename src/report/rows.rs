@@ -2,6 +2,7 @@
 
 use super::fixed::{push_direction, push_fixed};
 use crate::compass::{Figure, Worked};
+use crate::logbook::columns::ADDED;
 
 /// The decimals that angles have in JSON.
 const JSON_DECIMALS: u8 = 4;
@@ -30,40 +31,37 @@ pub struct RowFigures<'a> {
 pub enum Cell<'a> {
     /// Nothing.
     Blank,
-    /// A figure with its decimals in CSV.
-    Figure(f64, u8),
-    /// A direction with its decimals in CSV.
-    Direction(f64, u8),
+    /// A figure.
+    Figure(f64),
+    /// A direction, degrees.
+    Direction(f64),
     /// Words.
     Text(&'a str),
 }
 
-/// The number of columns that are ours.
-pub const COLUMNS: usize = 23;
-
 impl<'a> RowFigures<'a> {
     /// Every column of ours in order: name and cell.
-    pub fn cells(&self) -> [(&'static str, Cell<'a>); COLUMNS] {
+    pub fn cells(&self) -> [(&'static str, Cell<'a>); ADDED.len()] {
         let w = self.worked;
-        let direction = |d: Option<f64>, decimals| d.map_or(Cell::Blank, |d| Cell::Direction(d, decimals));
-        let figure = |f: Option<f64>, decimals| f.map_or(Cell::Blank, |f| Cell::Figure(f, decimals));
+        let direction = |d: Option<f64>| d.map_or(Cell::Blank, Cell::Direction);
+        let figure = |f: Option<f64>| f.map_or(Cell::Blank, Cell::Figure);
         fn value<T: Copy>(f: Option<Figure<T>>, deg: impl Fn(T) -> f64) -> Cell<'static> {
-            f.map_or(Cell::Blank, |f| Cell::Figure(deg(f.value), 2))
+            f.map_or(Cell::Blank, |f| Cell::Figure(deg(f.value)))
         }
         fn u<T>(f: Option<Figure<T>>) -> Cell<'static> {
-            f.map_or(Cell::Blank, |f| Cell::Figure(f.u_deg(), 2))
+            f.map_or(Cell::Blank, |f| Cell::Figure(f.u_deg()))
         }
         let text = |t: &'a str| if t.is_empty() { Cell::Blank } else { Cell::Text(t) };
         let at_time = w.and_then(|w| w.at_time);
         [
-            ("true_azimuth", direction(w.and_then(|w| w.true_azimuth).map(|z| z.deg()), 3)),
-            ("altitude", figure(at_time.map(|h| h.altitude_deg), 3)),
-            ("azimuth_at_time", direction(at_time.map(|h| h.azimuth.deg()), 3)),
+            ("true_azimuth", direction(w.and_then(|w| w.true_azimuth).map(|z| z.deg()))),
+            ("altitude", figure(at_time.map(|h| h.altitude_deg))),
+            ("azimuth_at_time", direction(at_time.map(|h| h.azimuth.deg()))),
             ("gyro_error", value(w.and_then(|w| w.gyro_error), |e| e.deg())),
             ("gyro_error_u", u(w.and_then(|w| w.gyro_error))),
             ("compass_error", value(w.and_then(|w| w.compass_error), |e| e.deg())),
             ("compass_error_u", u(w.and_then(|w| w.compass_error))),
-            ("true_heading", direction(w.and_then(|w| w.true_heading).map(|h| h.deg()), 2)),
+            ("true_heading", direction(w.and_then(|w| w.true_heading).map(|h| h.deg()))),
             ("compass_error_by_comparison", value(w.and_then(|w| w.compass_error_by_comparison), |e| e.deg())),
             ("compass_error_by_comparison_u", u(w.and_then(|w| w.compass_error_by_comparison))),
             ("variation", value(w.and_then(|w| w.variation), |v| v.deg())),
@@ -72,7 +70,7 @@ impl<'a> RowFigures<'a> {
             ("deviation_u", u(w.and_then(|w| w.deviation))),
             ("deviation_by_comparison", value(w.and_then(|w| w.deviation_by_comparison), |d| d.deg())),
             ("deviation_by_comparison_u", u(w.and_then(|w| w.deviation_by_comparison))),
-            ("card_deviation", figure(self.card_deviation_deg, 2)),
+            ("card_deviation", figure(self.card_deviation_deg)),
             ("trust", w.and_then(|w| w.trust).map_or(Cell::Blank, |t| Cell::Text(t.word()))),
             ("queries", text(self.queries)),
             ("slip", text(self.slip)),
@@ -84,12 +82,13 @@ impl<'a> RowFigures<'a> {
 
     /// Appends the cells with `delimiter` before each.
     pub fn push_csv(&self, out: &mut Vec<u8>, delimiter: u8) {
-        for (_, cell) in self.cells() {
+        for ((_, cell), column) in self.cells().into_iter().zip(&ADDED) {
+            let decimals = column.decimals.unwrap_or(JSON_DECIMALS);
             out.push(delimiter);
             match cell {
                 Cell::Blank => {}
-                Cell::Figure(value, decimals) => push_fixed(out, value, decimals),
-                Cell::Direction(deg, decimals) => push_direction(out, deg, decimals),
+                Cell::Figure(value) => push_fixed(out, value, decimals),
+                Cell::Direction(deg) => push_direction(out, deg, decimals),
                 Cell::Text(text) => push_csv_text(out, text, delimiter),
             }
         }
@@ -103,8 +102,8 @@ impl<'a> RowFigures<'a> {
             out.extend_from_slice(b"\":");
             match cell {
                 Cell::Blank => out.extend_from_slice(b"null"),
-                Cell::Figure(value, _) => push_fixed(out, value, JSON_DECIMALS),
-                Cell::Direction(deg, _) => push_direction(out, deg, JSON_DECIMALS),
+                Cell::Figure(value) => push_fixed(out, value, JSON_DECIMALS),
+                Cell::Direction(deg) => push_direction(out, deg, JSON_DECIMALS),
                 Cell::Text(text) => push_json_text(out, text),
             }
         }

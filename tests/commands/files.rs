@@ -73,6 +73,28 @@ fn json_lines_have_the_same_names() {
 }
 
 #[test]
+fn json_lines_keep_what_spreadsheets_write_and_name_each_column_once() {
+    let bytes = b"utc,lat,lon,body,gyro_bearing,extra,extra,\n2026-06-14T06:12Z,36\xB005.8\x92S,130E,Sun,319,a,b,c\n";
+    let ran = shadowpin(&["review", "-", "-q", "--format", "json"], bytes);
+    let found: serde_json::Value = serde_json::from_str(ran.out.trim()).unwrap();
+    assert_eq!(found["lat"], "36°05.8’S");
+    assert_eq!((&found["extra"], &found["extra (column 7)"], &found["column 8"]), (&"a".into(), &"b".into(), &"c".into()));
+}
+
+#[test]
+fn decimal_commas_are_read_and_carried_as_they_are() {
+    let point = "utc;position;body;gyro_bearing;logged_gyro_error\n2026-06-14T06:12Z;36-05.8S, 130-33.6E;Sun;319.5;1.1W\n";
+    let comma = "utc;position;body;gyro_bearing;logged_gyro_error\n2026-06-14T06:12Z;36-05,8S, 130-33,6E;Sun;319,5;1,1W\n";
+    let with_point = shadowpin(&["review", "-", "-q"], point.as_bytes());
+    let with_comma = shadowpin(&["review", "-", "-q", "--decimal-comma"], comma.as_bytes());
+    let ours = |ran: &super::Ran, log: &str| ran.out.lines().last().unwrap().strip_prefix(log.lines().last().unwrap()).map(str::to_owned);
+    assert!(ours(&with_point, point).is_some_and(|figures| figures.starts_with(";318.379;")), "{}", with_point.out);
+    assert_eq!(ours(&with_comma, comma), ours(&with_point, point));
+    let bad = comma.replace("319,5", "419,5");
+    assert!(shadowpin(&["review", "-", "--decimal-comma"], bad.as_bytes()).err.contains("gyro_bearing: \"419,5\": expected"));
+}
+
+#[test]
 fn exit_zero_is_for_engines() {
     let bad = log("2026-06-14T06:12:00Z,95,1,Sun,319.5,\n");
     assert_eq!(shadowpin(&["review", "-", "-q"], &bad).code, Some(3));

@@ -16,7 +16,13 @@ pub fn read_number(text: &str, range: std::ops::RangeInclusive<f64>, what: &'sta
     };
     // `str::parse` would also take exponents, "inf" and "nan".
     if digits.is_empty() || !digits.bytes().all(|b| b.is_ascii_digit() || b == b'.') {
-        let hint = if digits.contains(',') { "is that a decimal comma? say --decimal-comma" } else { "" };
+        let hint = if digits.contains(',') {
+            "is that a decimal comma? say --decimal-comma"
+        } else if digits.starts_with(|c: char| c.is_ascii_digit()) && digits.ends_with(char::is_alphabetic) {
+            "write the figure alone, without its unit"
+        } else {
+            ""
+        };
         return Err(BadValue::new(text, what).hint(hint));
     }
     let value: f64 = digits.parse().map_err(|_| BadValue::new(text, what))?;

@@ -28,7 +28,7 @@ pub struct Faults {
 }
 
 /// Columns without which there is no direction to reckon from.
-const ESSENTIAL: [Column; 18] = [
+const ESSENTIAL: [Column; 17] = [
     Column::Utc,
     Column::ShipTime,
     Column::Zone,
@@ -43,7 +43,6 @@ const ESSENTIAL: [Column; 18] = [
     Column::Method,
     Column::Horizon,
     Column::Limb,
-    Column::EyeHeight,
     Column::ChartedBearing,
     Column::GyroType,
     Column::Where,
@@ -54,6 +53,11 @@ impl Faults {
     pub fn add(&mut self, column: Column, bad: BadValue) {
         self.essential |= ESSENTIAL.contains(&column);
         self.list.push(Fault { column: column.info().name, bad });
+    }
+
+    /// Says that a fault of `column`, where there is one, leaves nothing to reckon from in this row.
+    pub(super) fn need(&mut self, column: Column) {
+        self.essential |= self.list.iter().any(|fault| fault.column == column.info().name);
     }
 
     /// Adds a fault of the row as a whole; `what` stands where a column's name would.

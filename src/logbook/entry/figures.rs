@@ -15,6 +15,10 @@ impl<C: Cells> Reader<'_, C> {
         const TYPES: [(&str, GyroType); 2] = [("spinning", GyroType::Spinning), ("other", GyroType::Other)];
         const PLACES: [(&str, Whereabouts); 3] =
             [("sea", Whereabouts::Sea), ("anchor", Whereabouts::Anchor), ("berth", Whereabouts::Berth)];
+        const MEANT_TYPES: [(&str, &str); 5] =
+            [("fog", "other"), ("fib", "other"), ("sat", "other"), ("ring laser", "other"), ("mechanical", "spinning")];
+        const MEANT_PLACES: [(&str, &str); 6] =
+            [("harbour", "berth"), ("port", "berth"), ("moored", "berth"), ("along", "berth"), ("dock", "berth"), ("under way", "sea")];
         let number = |range, what| move |text: &str| read_number(text, range, what);
         Observation {
             gyro_bearing: self.direction(Column::GyroBearing, GyroBearing::wrapping_deg),
@@ -24,8 +28,8 @@ impl<C: Cells> Reader<'_, C> {
             speed_kn: self.read(Column::Speed, number(0.0..=100.0, "a speed in knots, 0 to 100")),
             eye_height_m: self.read(Column::EyeHeight, number(0.0..=100.0, "a height of eye in metres, 0 to 100")),
             heel_deg: self.read(Column::Heel, number(-90.0..=90.0, "a heel in degrees, starboard +, -90 to 90")),
-            whereabouts: self.read(Column::Where, |text| one_of(text, &PLACES, "sea, anchor or berth")).unwrap_or_default(),
-            gyro_type: self.read(Column::GyroType, |text| one_of(text, &TYPES, "spinning or other")).unwrap_or_default(),
+            whereabouts: self.read(Column::Where, |text| one_of(text, &PLACES, &MEANT_PLACES, "sea, anchor or berth")).unwrap_or_default(),
+            gyro_type: self.read(Column::GyroType, |text| one_of(text, &TYPES, &MEANT_TYPES, "spinning or other")).unwrap_or_default(),
             ..Observation::of(Target::Headings)
         }
     }

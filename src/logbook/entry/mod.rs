@@ -12,7 +12,8 @@ use super::columns::Column;
 use super::log::Cells;
 use crate::angle::Reading;
 use crate::angle::text::ErrorSign;
-use crate::compass::{Observation, Place};
+use crate::compass::{HorizonKind, Observation, Place, Target};
+use crate::error::BadValue;
 use crate::time::text::DateOrder;
 use crate::time::{Moment, Zone};
 use std::borrow::Cow;
@@ -72,8 +73,10 @@ pub struct Entry<'r> {
 
 /// Reads one row. Every fault is put into `faults`; what can be read in spite of them is read.
 ///
-/// A fault in what the direction is reckoned from (time, place, body, method, horizon, charted bearing) leaves the row without an
-/// observation; one in a reading or a logged figure leaves that figure blank. A row that says nothing could be had is never at fault.
+/// A fault in what the direction is reckoned from (time, place, body, method, horizon and limb, the height of eye on the visible horizon,
+/// charted bearing), or in what would change its meaning if a default stood there (kind of gyro, where the ship was), leaves the row
+/// without an observation; one in a reading or a logged figure leaves that figure blank. Either stands in the column `problem`. A row
+/// that says nothing could be had is never at fault.
 pub fn read_entry<'r>(cells: &'r impl Cells, read_as: ReadAs, faults: &mut Faults) -> Entry<'r> {
     let mut reader = Reader { cells, read_as, faults };
     let mut entry = Entry {
@@ -101,6 +104,9 @@ pub fn read_entry<'r>(cells: &'r impl Cells, read_as: ReadAs, faults: &mut Fault
     let target = method.and_then(|m| reader.target(m));
     entry.logged = reader.logged();
     let observation = reader.readings();
+    if matches!(target, Some(Target::OnHorizon { horizon: HorizonKind::Visible(_), .. })) {
+        reader.faults.need(Column::EyeHeight);
+    }
     entry.observation = target.filter(|_| !reader.faults.essential()).map(|target| Observation {
         target,
         moment: entry.moment,
@@ -118,7 +124,7 @@ struct Reader<'a, C> {
 }
 
 impl<'a, C: Cells> Reader<'a, C> {
-    /// The cell where it is not blank; a decimal comma is read as a point where the log has them.
+    /// The cell where it is not blank.
     fn cell(&self, column: Column) -> Option<Cow<'a, str>> {
         let text = self.cells.text(column);
         if text.is_empty() {
@@ -127,21 +133,107 @@ impl<'a, C: Cells> Reader<'a, C> {
         Some(text)
     }
 
-    /// The cell as figures are written.
+    /// The cell, a decimal comma as a point where the log has them.
     fn figure(&self, column: Column) -> Option<Cow<'a, str>> {
         let text = self.cell(column)?;
-        if self.read_as.decimal_comma && text.contains(',') { Some(Cow::Owned(text.replace(',', "."))) } else { Some(text) }
+        if !self.read_as.decimal_comma || !text.contains(',') {
+            return Some(text);
+        }
+        Some(Cow::Owned(if column == Column::Position { commas_within_figures(&text) } else { text.replace(',', ".") }))
     }
 
     /// The value of a cell that is not blank; a fault where it cannot be read.
-    fn read<T>(&mut self, column: Column, read: impl FnOnce(&str) -> Result<T, crate::error::BadValue>) -> Option<T> {
+    fn read<T>(&mut self, column: Column, read: impl FnOnce(&str) -> Result<T, BadValue>) -> Option<T> {
         let text = self.figure(column)?;
         match read(&text) {
             Ok(value) => Some(value),
-            Err(bad) => {
+            Err(mut bad) => {
+                if self.read_as.decimal_comma {
+                    // As it stands in the log, not as it was read.
+                    bad.value = BadValue::new(&self.cell(column).unwrap_or_default(), "").value;
+                }
                 self.faults.add(column, bad);
                 None
             }
         }
+    }
+}
+
+/// In a position a comma may also part latitude and longitude: only one between two figures is a decimal one.
+fn commas_within_figures(text: &str) -> String {
+    let mut out = String::with_capacity(text.len());
+    let mut rest = text;
+    while let Some((before, behind)) = rest.split_once(',') {
+        out.push_str(before);
+        let within = before.ends_with(|c: char| c.is_ascii_digit()) && behind.starts_with(|c: char| c.is_ascii_digit());
+        out.push(if within { '.' } else { ',' });
+        rest = behind;
+    }
+    out.push_str(rest);
+    out
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A row that holds every column's example.
+    struct Examples;
+
+    impl Cells for Examples {
+        fn has(&self, _: Column) -> bool {
+            true
+        }
+
+        fn bytes(&self, column: Column) -> &[u8] {
+            column.info().example.as_bytes()
+        }
+    }
+
+    #[test]
+    fn the_examples_can_be_read_and_agree() {
+        let mut faults = Faults::default();
+        let entry = read_entry(&Examples, ReadAs::default(), &mut faults);
+        assert!(faults.is_empty(), "{}", faults.in_one());
+        assert!(entry.observation.is_some_and(|o| o.gyro_bearing.is_some() && o.speed_kn.is_some() && o.heel_deg == Some(-2.0)));
+        assert!(entry.logged.gyro_error.is_some_and(|e| e.value == 0.5));
+    }
+
+    #[test]
+    fn a_height_of_eye_is_needed_on_the_visible_horizon_only() {
+        struct Row(&'static str);
+        impl Cells for Row {
+            fn has(&self, _: Column) -> bool {
+                true
+            }
+
+            fn bytes(&self, column: Column) -> &[u8] {
+                let text = match column {
+                    Column::Utc => "2026-06-13T22:16Z",
+                    Column::Position => "36-05.8S 130-33.6E",
+                    Column::Body => "Sun",
+                    Column::Method => "rising",
+                    Column::Horizon => self.0,
+                    Column::EyeHeight => "18 m",
+                    _ => "",
+                };
+                text.as_bytes()
+            }
+        }
+        let worked = |row: &Row| {
+            let mut faults = Faults::default();
+            let entry = read_entry(row, ReadAs::default(), &mut faults);
+            assert_eq!(faults.iter().count(), 1);
+            entry.observation.is_some()
+        };
+        assert!(worked(&Row("celestial")));
+        assert!(!worked(&Row("visible")));
+    }
+
+    #[test]
+    fn a_comma_in_a_position() {
+        assert_eq!(commas_within_figures("36-05,8S, 130-33,6E"), "36-05.8S, 130-33.6E");
+        assert_eq!(commas_within_figures("-36,096 130,56"), "-36.096 130.56");
+        assert_eq!(commas_within_figures(",36,"), ",36,");
     }
 }

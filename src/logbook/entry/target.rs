@@ -22,10 +22,18 @@ pub(super) enum Method {
     None,
 }
 
-/// The value of a cell that holds one of a few words, in any case.
-pub(super) fn one_of<T: Copy>(text: &str, words: &[(&'static str, T)], expected: &'static str) -> Result<T, BadValue> {
+/// The value of a cell that holds one of a few words, in any case. `meant` are parts of other words for the same, each with the right
+/// one for the hint.
+pub(super) fn one_of<T: Copy>(
+    text: &str,
+    words: &[(&'static str, T)],
+    meant: &[(&str, &'static str)],
+    expected: &'static str,
+) -> Result<T, BadValue> {
     words.iter().find(|(word, _)| text.eq_ignore_ascii_case(word)).map(|(_, value)| *value).ok_or_else(|| {
-        let near = nearest(text, words.iter().map(|(word, _)| *word));
+        let lower = text.to_lowercase();
+        let near = nearest(text, words.iter().map(|(word, _)| *word))
+            .or_else(|| meant.iter().find(|(part, _)| lower.contains(part)).map(|(_, word)| *word));
         BadValue::new(text, expected).hint(near.map(|word| format!("is it {word}?")).unwrap_or_default())
     })
 }
@@ -40,10 +48,19 @@ impl<C: Cells> Reader<'_, C> {
             ("comparison", Method::Comparison),
             ("none", Method::None),
         ];
+        const MEANT: [(&str, &str); 7] = [
+            ("ris", "rising"),
+            ("set", "setting"),
+            ("ampl", "rising, or setting"),
+            ("range", "transit"),
+            ("mark", "transit"),
+            ("leading", "transit"),
+            ("compar", "comparison"),
+        ];
         if self.cell(Column::Method).is_none() {
             return Some(Method::Azimuth);
         }
-        self.read(Column::Method, |text| one_of(text, &WORDS, "azimuth, rising, setting, transit, comparison or none"))
+        self.read(Column::Method, |text| one_of(text, &WORDS, &MEANT, "azimuth, rising, setting, transit, comparison or none"))
     }
 
     pub(super) fn target(&mut self, method: Method) -> Option<Target> {
@@ -69,13 +86,21 @@ impl<C: Cells> Reader<'_, C> {
     fn on_horizon(&mut self, event: RisingOrSetting) -> Option<Target> {
         const HORIZONS: [(&str, bool); 2] = [("celestial", false), ("visible", true)];
         const LIMBS: [(&str, Limb); 3] = [("centre", Limb::Centre), ("upper", Limb::Upper), ("lower", Limb::Lower)];
+        const MEANT: [(&str, &str); 5] = [("top", "upper"), ("bottom", "lower"), ("mid", "centre"), ("ul", "upper"), ("ll", "lower")];
         let body = self.body();
-        let visible =
-            self.cell(Column::Horizon).is_some() && self.read(Column::Horizon, |text| one_of(text, &HORIZONS, "celestial or visible"))?;
+        let visible = self.cell(Column::Horizon).is_some()
+            && self
+                .read(Column::Horizon, |text| one_of(text, &HORIZONS, &[("vis", "visible"), ("sea", "visible")], "celestial or visible"))?;
         let limb = match self.cell(Column::Limb) {
             None => Limb::Centre,
-            Some(_) => self.read(Column::Limb, |text| one_of(text, &LIMBS, "centre, upper or lower"))?,
+            Some(_) => self.read(Column::Limb, |text| one_of(text, &LIMBS, &MEANT, "centre, upper or lower"))?,
         };
+        if !visible && limb != Limb::Centre {
+            let text = self.cell(Column::Limb).unwrap_or_default();
+            let bad = BadValue::new(&text, "no limb on the celestial horizon");
+            self.faults.add(Column::Limb, bad.hint("a limb is seen on the visible horizon: write visible in the column horizon"));
+            return None;
+        }
         let horizon = if visible { HorizonKind::Visible(limb) } else { HorizonKind::Celestial };
         Some(Target::OnHorizon { body: body?, event, horizon })
     }

@@ -5,6 +5,9 @@ use std::borrow::Cow;
 
 /// Anything that has cells under the log's columns: a row of a file, or options of a command line.
 pub trait Cells {
+    /// Whether there is such a column, blank or not.
+    fn has(&self, column: Column) -> bool;
+
     /// The cell as it stands, untrimmed; blank where there is none.
     fn bytes(&self, column: Column) -> &[u8];
 
@@ -17,13 +20,18 @@ pub trait Cells {
     }
 }
 
+/// A cell's bytes as text, blanks about it kept; what is not UTF-8 is read as [`Cells::text`] says.
+pub fn readable(bytes: &[u8]) -> Cow<'_, str> {
+    match std::str::from_utf8(bytes) {
+        Ok(text) => Cow::Borrowed(text),
+        Err(_) => encoding_rs::WINDOWS_1252.decode_without_bom_handling(bytes).0,
+    }
+}
+
 /// A cell's bytes as trimmed text.
 pub(crate) fn text_of(bytes: &[u8]) -> Cow<'_, str> {
-    match std::str::from_utf8(bytes) {
-        Ok(text) => Cow::Borrowed(text.trim()),
-        Err(_) => {
-            let (text, _) = encoding_rs::WINDOWS_1252.decode_without_bom_handling(bytes);
-            Cow::Owned(text.trim().to_owned())
-        }
+    match readable(bytes) {
+        Cow::Borrowed(text) => Cow::Borrowed(text.trim()),
+        Cow::Owned(text) => Cow::Owned(text.trim().to_owned()),
     }
 }

@@ -5,7 +5,7 @@ mod header;
 mod reader;
 mod record;
 
-pub use cells::Cells;
+pub use cells::{Cells, readable};
 pub use header::Header;
 pub use reader::{LogReader, LogRow};
-pub use record::{LONGEST_ROW, Record};
+pub use record::{LONGEST_ROW, MOST_CELLS, Record};

@@ -2,7 +2,7 @@
 
 use super::cells::Cells;
 use super::header::Header;
-use super::record::{Record, Records};
+use super::record::{LONGEST_ROW, MOST_CELLS, Record, Records};
 use crate::error::{Error, Result};
 use crate::logbook::columns::Column;
 use std::io::Read;
@@ -19,6 +19,10 @@ pub struct LogRow<'r> {
 }
 
 impl Cells for LogRow<'_> {
+    fn has(&self, column: Column) -> bool {
+        self.header.place(column).is_some()
+    }
+
     fn bytes(&self, column: Column) -> &[u8] {
         self.header.place(column).and_then(|i| self.record.cell(i)).unwrap_or_default()
     }
@@ -44,8 +48,15 @@ impl<R: Read> LogReader<R> {
         let mut records = Records::new(source)?;
         let mut titles = Record::default();
         let content = |line, message: String| Error::Content { file: name.to_owned(), line, message };
+        if records.unusable_separator {
+            return Err(content(1, "sep= names nothing that can part cells: a comma, semicolon, tab, | ^ or ~ was expected".into()));
+        }
         if !records.next(&mut titles)? {
             return Err(content(0, "the file is empty: a header with the columns' names was expected".into()));
+        }
+        if titles.too_long {
+            let message = format!("the header is longer than {LONGEST_ROW} bytes or {MOST_CELLS} cells: is a quote never closed?");
+            return Err(content(titles.line, message));
         }
         let header = Header::read(titles.cells(), again).map_err(|message| content(titles.line, message))?;
         Ok(Self { records, rows: 0, titles, header })

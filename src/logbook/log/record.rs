@@ -8,7 +8,9 @@ use std::io::Read;
 /// The longest row that is read, bytes; a longer one is most likely a quote that was never closed.
 pub const LONGEST_ROW: usize = 1 << 20;
 /// The most cells that a row may have.
-const MOST_CELLS: usize = 1 << 12;
+pub const MOST_CELLS: usize = 1 << 12;
+/// What a line `sep=` may name: bytes that stand in no figure, time or name of ours.
+const SEPARATORS: &[u8] = b",;\t|^~";
 /// Bytes read at a time.
 const BUFFER: usize = 1 << 16;
 
@@ -20,7 +22,7 @@ pub struct Record {
     used: usize,
     /// Line of the file on which the row begins, from 1.
     pub line: u64,
-    /// Whether the row was longer than [`LONGEST_ROW`]: its cells are lost.
+    /// Whether the row was longer than [`LONGEST_ROW`], or had more than [`MOST_CELLS`]: its cells are lost.
     pub too_long: bool,
 }
 
@@ -56,8 +58,12 @@ pub(super) struct Records<R: Read> {
     filled: usize,
     taken: usize,
     line: u64,
+    /// The byte that lines are counted by: a line feed, or a carriage return where the first line ends in that alone.
+    line_end: u8,
     /// What parts the cells.
     pub delimiter: u8,
+    /// Whether the file began with a line `sep=` that names nothing that can part cells.
+    pub unusable_separator: bool,
     /// Whether the file began with a line that names its separator.
     pub names_separator: bool,
 }
@@ -78,7 +84,9 @@ impl<R: Read> Records<R> {
             filled: 0,
             taken: 0,
             line: 1,
+            line_end: b'\n',
             delimiter: b',',
+            unusable_separator: false,
             names_separator: false,
         };
         records.fill()?;
@@ -106,10 +114,20 @@ impl<R: Read> Records<R> {
 
     fn find_delimiter(&mut self) {
         let start = self.buffer.get(..self.filled).unwrap_or_default();
-        if let [b's' | b'S', b'e' | b'E', b'p' | b'P', b'=', separator, rest @ ..] = start
-            && matches!(rest.first(), None | Some(b'\r' | b'\n'))
+        let first_end = start.iter().position(|b| matches!(b, b'\r' | b'\n')).unwrap_or(start.len());
+        if let [b'\r', not_feed, ..] = start.get(first_end..).unwrap_or_default()
+            && *not_feed != b'\n'
         {
-            (self.delimiter, self.names_separator, self.taken) = (*separator, true, 5);
+            self.line_end = b'\r';
+        }
+        let named = match start.get(..first_end).unwrap_or_default() {
+            [b's' | b'S', b'e' | b'E', b'p' | b'P', b'=', named @ ..] if named.len() <= 1 => Some(named),
+            _ => None,
+        };
+        if let Some(named) = named {
+            let separator = named.first().copied().filter(|b| SEPARATORS.contains(b));
+            (self.names_separator, self.unusable_separator, self.taken) = (true, separator.is_none(), first_end);
+            self.delimiter = separator.unwrap_or(b',');
         } else {
             let mut counts = [(b',', 0), (b';', 0), (b'\t', 0)];
             let mut quoted = false;
@@ -147,7 +165,7 @@ impl<R: Read> Records<R> {
             let bytes = record.bytes.get_mut(bytes_used..).unwrap_or_default();
             let ends = record.ends.get_mut(ends_used..).unwrap_or_default();
             let (result, taken, written, ended) = self.core.read_record(input, bytes, ends);
-            self.line += input.get(..taken).unwrap_or_default().iter().filter(|b| **b == b'\n').count() as u64;
+            self.line += input.get(..taken).unwrap_or_default().iter().filter(|b| **b == self.line_end).count() as u64;
             self.taken += taken;
             bytes_used += written;
             ends_used += ended;
@@ -172,8 +190,7 @@ impl<R: Read> Records<R> {
     fn skip_empty_lines(&mut self) -> Result<bool> {
         while self.fill()? {
             match self.buffer.get(self.taken) {
-                Some(b'\n') => self.line += 1,
-                Some(b'\r') => {}
+                Some(end @ (b'\n' | b'\r')) => self.line += u64::from(*end == self.line_end),
                 _ => return Ok(true),
             }
             self.taken += 1;
@@ -215,6 +232,15 @@ mod tests {
         assert_eq!(rows(&utf16), (vec![(1, vec!["a".into(), "b".into()]), (2, vec!["1".into(), "2".into()])], b'\t'));
         assert_eq!(rows(b"sep=;\r\na,x;b\r\n").0[0].1, ["a,x", "b"]);
         assert_eq!(rows(b""), (vec![], b','));
+        assert!(["sep=\r\na", "sep=\"\na", "sep=.\na", "SEP=5"].iter().all(|t| Records::new(t.as_bytes()).unwrap().unusable_separator));
+        assert_eq!(rows(b"sep=ab,x\n1,2\n").0[0].1, ["sep=ab", "x"]);
+    }
+
+    #[test]
+    fn lines_that_end_in_a_carriage_return_are_counted() {
+        let lines = |text: &[u8]| rows(text).0.iter().map(|(line, _)| *line).collect::<Vec<_>>();
+        assert_eq!(lines(b"a,b\r1,2\r\r3,4\r"), [1, 2, 4]);
+        assert_eq!(lines(b"a,b\r\n1,2\r\n\r\n3,4"), [1, 2, 4]);
     }
 
     #[test]
