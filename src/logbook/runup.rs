@@ -137,6 +137,10 @@ struct InTable<'t> {
 }
 
 impl Cells for InTable<'_> {
+    fn has(&self, column: LogColumn) -> bool {
+        self.table.column(column.info().name).is_there()
+    }
+
     fn bytes(&self, column: LogColumn) -> &[u8] {
         self.row.cell(self.table.column(column.info().name)).as_bytes()
     }
