@@ -65,7 +65,7 @@ pub fn speed_error(speed_kn: f64, course: TrueBearing, latitude: Latitude, equat
 ///
 /// Undefined: as [`speed_error`].
 pub fn speed_error_by_gyro_course(speed_kn: f64, course: GyroBearing, latitude: Latitude, equator: EquatorSpeed) -> Option<GyroError> {
-    if latitude.deg().abs() > 90.0 - POLE_DEG || !speed_kn.is_finite() {
+    if latitude.deg().abs() > 90.0 - POLE_DEG || !(0.0..f64::INFINITY).contains(&speed_kn) {
         return None;
     }
     let (sin_course, cos_course) = course.deg().to_radians().sin_cos();
@@ -170,6 +170,10 @@ mod tests {
             }
         }
         assert!(answered > 1200, "{answered}");
+        let north = GyroBearing::wrapping_deg(0.0);
+        for nonsense in [-5.0, f64::NAN, f64::INFINITY] {
+            assert!(speed_error_by_gyro_course(nonsense, north, Latitude::from_deg(50.0).unwrap(), EquatorSpeed::Earth).is_none());
+        }
     }
 
     #[test]
