@@ -60,34 +60,36 @@ pub fn speed_error(speed_kn: f64, course: TrueBearing, latitude: Latitude, equat
     (eastward_kn > 0.0).then(|| GyroError::wrapping_deg(-(speed_kn * cos_course).atan2(eastward_kn).to_degrees()))
 }
 
-/// The same where only the course by that gyro is known: true course = gyro course + the error itself, found by repetition.
+/// The same where only the course by that gyro is known: sin e = -V cos G / (900 cos lat), G the gyro course.
 ///
-/// Undefined: as [`speed_error`]; and `None` where repetition comes to no end, as it may where the ship moves about as fast as the earth there.
+/// Gyro north stands at right angles to the ship's whole motion in space, so nothing of that motion lies along it:
+/// 900 cos lat sin e + V cos G = 0, with G = C - e.
+///
+/// Undefined: as [`speed_error`]; `None` for a negative speed, and where the ship may outrun the earth.
 pub fn speed_error_by_gyro_course(speed_kn: f64, course: GyroBearing, latitude: Latitude, equator: EquatorSpeed) -> Option<GyroError> {
-    let mut error = GyroError::wrapping_deg(0.0);
-    // Each round shrinks what is left by V / (900 cos lat): four or five rounds where ships are.
-    for _ in 0..MOST_ROUNDS {
-        let next = speed_error(speed_kn, course + error, latitude, equator)?;
-        if (next.deg() - error.deg()).abs() < ROUND_DEG {
-            return Some(next);
-        }
-        error = next;
+    if latitude.deg().abs() > 90.0 - POLE_DEG || !(0.0..f64::INFINITY).contains(&speed_kn) {
+        return None;
     }
-    None
+    let (sin_course, cos_course) = course.deg().to_radians().sin_cos();
+    let earth_kn = equator.kn() * latitude.deg().to_radians().cos();
+    let sine = -speed_kn * cos_course / earth_kn;
+    if sine.abs() >= 1.0 {
+        return None;
+    }
+    let error = sine.asin();
+    let eastward_by_gyro_kn = earth_kn * error.cos() + speed_kn * sin_course;
+    let eastward_kn = earth_kn + speed_kn * (course.deg().to_radians() + error).sin();
+    (eastward_by_gyro_kn > 0.0 && eastward_kn > 0.0).then(|| GyroError::wrapping_deg(error.to_degrees()))
 }
-
-/// Rounds of repetition, and the difference that ends it, degrees (our own).
-const MOST_ROUNDS: u32 = 60;
-const ROUND_DEG: f64 = 1e-7;
 
 /// Whether an observed gyro error looks like a speed error that was not corrected.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum SpeedVerdict {
     /// The gyro has no speed error.
     NoSpeedError,
-    /// Too small to tell from nothing with that uncertainty.
+    /// Too small to tell from nothing with that uncertainty, or the observed error fits both.
     TooSmallToTell,
-    /// It does: the observed error is nearer to the expected one than to nothing, and within 2 u of it.
+    /// It does: the observed error is within 2 u of the expected one, and not of nothing.
     LooksUncorrected,
     /// It does not.
     LooksCorrected,
@@ -97,7 +99,8 @@ pub enum SpeedVerdict {
     Neither,
 }
 
-/// Compares an observed gyro error with the speed error to expect were the corrector off.
+/// Compares an observed gyro error with the speed error to expect were the corrector off: which of nil, once and twice it lies
+/// within 2 u of, where it is one of them only.
 ///
 /// One observation cannot prove it: other errors add to it. Over many, the review fits the slope.
 pub fn speed_verdict(gyro_type: GyroType, observed: GyroError, u_deg: f64, expected: GyroError) -> SpeedVerdict {
@@ -107,15 +110,13 @@ pub fn speed_verdict(gyro_type: GyroType, observed: GyroError, u_deg: f64, expec
     if expected.deg().abs() < 2.0 * u_deg {
         return SpeedVerdict::TooSmallToTell;
     }
-    let near = |times: f64| (observed.deg() - times * expected.deg()).abs();
     // The corrector set against its sense doubles the error.
-    let nearest =
-        [(near(0.0), SpeedVerdict::LooksCorrected), (near(1.0), SpeedVerdict::LooksUncorrected), (near(2.0), SpeedVerdict::LooksDoubled)]
-            .into_iter()
-            .min_by(|a, b| a.0.total_cmp(&b.0));
-    match nearest {
-        Some((off, verdict)) if off <= 2.0 * u_deg => verdict,
-        _ => SpeedVerdict::Neither,
+    let stories = [(0.0, SpeedVerdict::LooksCorrected), (1.0, SpeedVerdict::LooksUncorrected), (2.0, SpeedVerdict::LooksDoubled)];
+    let mut fitting = stories.into_iter().filter(|(times, _)| (observed.deg() - times * expected.deg()).abs() <= 2.0 * u_deg);
+    match (fitting.next(), fitting.next()) {
+        (Some((_, only)), None) => only,
+        (Some(_), Some(_)) => SpeedVerdict::TooSmallToTell,
+        (None, _) => SpeedVerdict::Neither,
     }
 }
 
@@ -145,4 +146,51 @@ pub fn damping_error(k: f64, latitude: Latitude) -> Option<GyroError> {
 pub fn damping_constant(error: GyroError, latitude: Latitude) -> Option<f64> {
     let tangent = latitude.deg().to_radians().tan();
     (tangent.abs() > 1e-6).then(|| error.deg().to_radians().sin() / tangent)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn by_gyro_course_is_the_error_on_the_true_course_that_it_gives() {
+        let mut answered = 0;
+        for latitude in [-89.4, -89.0, -85.0, -40.0, 0.0, 55.0, 88.0, 89.3] {
+            for course in (0..360).step_by(7) {
+                for speed_kn in [0.0, 6.0, 15.0, 40.0] {
+                    let latitude = Latitude::from_deg(latitude).unwrap();
+                    let by_gyro = GyroBearing::wrapping_deg(f64::from(course));
+                    let Some(error) = speed_error_by_gyro_course(speed_kn, by_gyro, latitude, EquatorSpeed::Handbook) else {
+                        // Only where the ship may outrun the earth.
+                        assert!(speed_kn >= EquatorSpeed::Handbook.kn() * latitude.deg().to_radians().cos(), "{latitude:?} {course}");
+                        continue;
+                    };
+                    let again = speed_error(speed_kn, by_gyro + error, latitude, EquatorSpeed::Handbook).unwrap();
+                    assert!((again.deg() - error.deg()).abs() < 1e-9, "{latitude:?} {course} {speed_kn}: {error:?} {again:?}");
+                    answered += 1;
+                }
+            }
+        }
+        assert!(answered > 1200, "{answered}");
+        let north = GyroBearing::wrapping_deg(0.0);
+        for nonsense in [-5.0, f64::NAN, f64::INFINITY] {
+            assert!(speed_error_by_gyro_course(nonsense, north, Latitude::from_deg(50.0).unwrap(), EquatorSpeed::Earth).is_none());
+        }
+    }
+
+    #[test]
+    fn verdicts() {
+        let verdict = |observed: f64, u_deg: f64, expected: f64, gyro_type: GyroType| {
+            speed_verdict(gyro_type, GyroError::wrapping_deg(observed), u_deg, GyroError::wrapping_deg(expected))
+        };
+        let spinning = |observed: f64, u_deg: f64, expected: f64| verdict(observed, u_deg, expected, GyroType::Spinning);
+        assert_eq!(spinning(-1.9, 0.3, -1.98), SpeedVerdict::LooksUncorrected);
+        assert_eq!(spinning(0.2, 0.3, -1.98), SpeedVerdict::LooksCorrected);
+        assert_eq!(spinning(-3.9, 0.3, -1.98), SpeedVerdict::LooksDoubled);
+        assert_eq!(spinning(2.0, 0.3, -1.98), SpeedVerdict::Neither);
+        assert_eq!(spinning(-0.5, 0.4, -0.7), SpeedVerdict::TooSmallToTell);
+        // Between the two, and within 2 u of both.
+        assert_eq!(spinning(-0.55, 0.4, -1.0), SpeedVerdict::TooSmallToTell);
+        assert_eq!(verdict(-1.98, 0.3, -1.98, GyroType::Other), SpeedVerdict::NoSpeedError);
+    }
 }
