@@ -99,7 +99,7 @@ pub fn run(args: Args) -> Result<Exit> {
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
     }
-    let on_card = args.card.on(&observation, moment.utc)?;
+    let on_card = args.card.on(&observation, moment.utc, &limits)?;
     let remarks = on_card.iter().flat_map(|card| card.sentences(&worked)).collect();
     let answer = match args.output.format {
         Format::Json => one_row::json(&observation, &worked, on_card.as_ref()),

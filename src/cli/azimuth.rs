@@ -50,7 +50,7 @@ pub fn run(args: Args) -> Result<Exit> {
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
     }
-    let on_card = args.card.on(&observation, moment.utc)?;
+    let on_card = args.card.on(&observation, moment.utc, &limits)?;
     let mut remarks = against::sentences(&observation, &worked, &limits);
     remarks.extend(on_card.iter().flat_map(|card| card.sentences(&worked)));
     let answer = match args.output.format {

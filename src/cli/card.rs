@@ -5,13 +5,11 @@ use clap::Args;
 use shadowpin::compass::Observation;
 use shadowpin::compass::card::{Card, Cards};
 use shadowpin::error::{Error, Result};
+use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::report::card::OnCard;
 use shadowpin::time::UtcInstant;
 use std::path::PathBuf;
-
-/// Months that a card is good for where nothing else is said (ISO 25862: adjustment every 2 years).
-const CARD_MONTHS: u32 = 24;
 
 /// The card to compare with.
 #[derive(Debug, Args)]
@@ -26,14 +24,19 @@ pub struct CardArgs {
 
 impl CardArgs {
     /// The card's deviation on the heading observed; `None` where no card was given.
-    pub fn on(&self, observation: &Observation, utc: UtcInstant) -> Result<Option<OnCard>> {
+    pub fn on(&self, observation: &Observation, utc: UtcInstant, limits: &Limits) -> Result<Option<OnCard>> {
         let (Some(path), Some(heading)) = (&self.card, observation.compass_heading) else { return Ok(None) };
         let (name, bytes) = read::content(path)?;
         let cards = read_cards(&name, &bytes)?;
         let card = only_one_in_force(&cards, utc).map_err(|message| Error::Content { file: name, line: 0, message })?;
         let as_given = self.card_as_given || card.curve().is_none();
         let deviation = if as_given { card.as_given(heading.value) } else { card.deviation(heading.value) };
-        Ok(Some(OnCard { heading: heading.value, deviation, as_given, notices: card.notices(Some(utc), CARD_MONTHS) }))
+        Ok(Some(OnCard {
+            heading: heading.value,
+            deviation,
+            as_given,
+            notices: card.notices(Some(utc), limits.thresholds.card_months.round() as u32),
+        }))
     }
 }
 

@@ -16,7 +16,7 @@ use shadowpin::logbook::log::{LONGEST_ROW, LogReader, LogRow, MOST_CELLS, Record
 use shadowpin::report::log_rows::{LogRows, RowsAs};
 use shadowpin::report::review_text;
 use shadowpin::report::rows::RowFigures;
-use shadowpin::review::{Desk, Fleet, Learn, Summary, Tally, Verdict, judge, names};
+use shadowpin::review::{CardWatch, Desk, Fleet, Learn, Summary, Tally, Verdict, judge, names};
 use std::io::Write;
 use std::path::PathBuf;
 
@@ -106,7 +106,7 @@ pub fn run(args: Args) -> Result<Exit> {
     if !args.quiet {
         log.header.hints.iter().for_each(|hint| eprintln!("{name}, line {}: {hint}", log.titles.line));
     }
-    let fleet = review.learn(log)?;
+    let (fleet, doubts) = review.learn(log)?;
     let mut out = RowsOut::open(args.output.as_deref())?;
     let (tally, problems) = review.judge(LogReader::new(input.rewound()?, &name, args.again)?, &fleet, &mut out)?;
     out.finish()?;
@@ -116,6 +116,7 @@ pub fn run(args: Args) -> Result<Exit> {
     }
     if !args.quiet {
         problems.print(&name);
+        doubts.iter().for_each(|doubt| eprintln!("Notice: {doubt}"));
         eprint!("{}", review_text::text(&summary));
     }
     let patterns = summary.vessels.iter().any(|v| !v.patterns.is_empty());
@@ -166,17 +167,20 @@ impl<'a> Review<'a> {
         Self { args, read_as, desk: Desk { limits, cards, card_as_given: args.card_as_given } }
     }
 
-    /// First pass: what each vessel's rows say together.
-    fn learn<R: std::io::Read>(&self, mut log: LogReader<R>) -> Result<Fleet> {
+    /// First pass: what each vessel's rows say together, and what they say of the cards.
+    fn learn<R: std::io::Read>(&self, mut log: LogReader<R>) -> Result<(Fleet, Vec<String>)> {
         let mut learn = Learn::new(self.desk.limits.clone());
+        let mut cards = CardWatch::new(self.desk.cards);
         let (mut record, mut faults) = (Record::default(), Faults::default());
         while let Some(row) = log.next(&mut record)? {
             faults.clear();
             if let Some(entry) = self.entry(&row, &mut faults) {
-                learn.feed(&self.desk.work(&entry, None).row(row.number));
+                let worked = self.desk.work(&entry, None);
+                cards.feed(self.desk.cards, &entry, &worked);
+                learn.feed(&worked.row(row.number));
             }
         }
-        Ok(learn.finish())
+        Ok((learn.finish(), cards.doubts(self.desk.limits)))
     }
 
     /// The entry of a row that can be judged: neither blank nor without anything to reckon from.

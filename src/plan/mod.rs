@@ -77,10 +77,20 @@ pub fn plan(ask: &Ask) -> Plan {
 }
 
 impl Plan {
-    /// The window or rising or setting with the least uncertainty; the earlier of two alike.
+    /// The window with the least uncertainty; the earlier of two alike.
     pub fn best_window(&self) -> Option<&Window> {
-        self.windows.iter().min_by(|a, b| a.u_deg.total_cmp(&b.u_deg).then(a.from.utc.cmp(&b.from.utc)))
+        self.windows.iter().min_by(|a, b| better(a, b))
     }
+
+    /// The rank of a window by the uncertainty that an observation in it would have: 1 for the best.
+    pub fn rank(&self, window: &Window) -> usize {
+        1 + self.windows.iter().filter(|other| better(other, window).is_lt()).count()
+    }
+}
+
+/// The less uncertain first, the earlier of two alike.
+fn better(a: &Window, b: &Window) -> std::cmp::Ordering {
+    a.u_deg.total_cmp(&b.u_deg).then(a.from.utc.cmp(&b.from.utc))
 }
 
 fn is_polaris(body: Body) -> bool {

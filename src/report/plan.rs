@@ -142,7 +142,8 @@ impl PlanPage<'_> {
             let side = course.map_or_else(String::new, |c| format!("  {}", self.side(w, c)));
             let name = format!("{}{}", w.body.name(), if w.first_choice { "" } else { " (high)" });
             page.sentence(&format!(
-                "{span:<32}{name:<16}{:<15}{:<12}{:>9}{:>5.1}{side}",
+                "{span:<32}{:<5}{name:<16}{:<15}{:<12}{:>9}{:>6.2}{side}",
+                self.plan.rank(w),
                 format!("{} - {}", direction(w.from.azimuth.deg(), 1), direction(w.to.azimuth.deg(), 1)),
                 format!("{:.0} - {:.0}", w.from.altitude_deg, w.to.altitude_deg),
                 format!("{:+.1}", w.rate_deg_per_10_min + 0.0),

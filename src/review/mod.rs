@@ -14,6 +14,7 @@
 
 mod bodies;
 mod candidates;
+mod card_watch;
 mod case;
 mod checks;
 mod curve;
@@ -35,6 +36,7 @@ mod slip;
 mod summary;
 mod vessel;
 
+pub use card_watch::CardWatch;
 pub use desk::{Desk, WorkedEntry, names};
 pub use fleet::Fleet;
 pub use judge::{Verdict, judge};

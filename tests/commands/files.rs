@@ -115,3 +115,28 @@ fn a_reader_that_goes_away_is_no_fault() {
     let output = child.wait_with_output().unwrap();
     assert_eq!((output.status.code(), output.stderr), (Some(0), Vec::new()));
 }
+
+/// A card whose east and west were exchanged is said once, and a card near nil on every heading too.
+#[test]
+fn cards_are_doubted_aloud() {
+    let folder = tempfile::tempdir().unwrap();
+    let (log_path, card_path) = (folder.path().join("log.csv"), folder.path().join("card.csv"));
+    // Deviation +6 sin(heading), observed by comparison on twelve headings; the card says the opposite.
+    let mut rows = String::from("utc,lat,lon,body,gyro_bearing,gyro_heading,compass_heading\n");
+    let mut card = String::from("compass_heading,deviation\n");
+    for i in 0..12 {
+        let heading = f64::from(i) * 30.0;
+        let deviation = 6.0 * heading.to_radians().sin();
+        card.push_str(&format!("{heading},{:.1}\n", -deviation));
+        // True heading = compass heading + deviation + variation (4.6 E there and then); the gyro is right, the sun at 318.4.
+        let true_heading = (heading + deviation + 4.6).rem_euclid(360.0);
+        rows.push_str(&format!("2026-06-14T06:12:{i:02}Z,36-05.8S,130-33.6E,Sun,318.4,{true_heading:.1},{heading:.1}\n"));
+    }
+    std::fs::write(&log_path, rows).unwrap();
+    std::fs::write(&card_path, card).unwrap();
+    let ran = shadowpin(&["review", log_path.to_str().unwrap(), "--card", card_path.to_str().unwrap(), "-o", "/dev/null"], b"");
+    assert!(ran.err.contains("Notice: the card: ") && ran.err.contains("card-reversed"), "{}", ran.err);
+    std::fs::write(&card_path, "compass_heading,deviation\n0,0.1\n60,0\n120,-0.1\n180,0\n240,0.1\n300,0\n").unwrap();
+    let ran = shadowpin(&["review", log_path.to_str().unwrap(), "--card", card_path.to_str().unwrap(), "-o", "/dev/null"], b"");
+    assert!(ran.err.contains("card-near-nil"), "{}", ran.err);
+}
