@@ -92,6 +92,8 @@ impl RowsOut {
             return Ok(Self::Stream(BufWriter::with_capacity(BUFFER, File::create(path).map_err(failed)?), path.to_owned()));
         }
         let folder = path.parent().filter(|p| !p.as_os_str().is_empty()).unwrap_or(Path::new("."));
+        // Asked first, so that the message names what the user wrote and not our file beside it.
+        folder.metadata().map_err(failed)?;
         let file = tempfile::Builder::new().prefix(".rows-").tempfile_in(folder).map_err(failed)?;
         Ok(Self::Whole(BufWriter::with_capacity(BUFFER, file), path.to_owned()))
     }

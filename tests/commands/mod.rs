@@ -4,6 +4,7 @@ mod answers;
 mod bad_logs;
 mod delivered_log;
 mod files;
+mod readme;
 mod settle;
 
 use std::io::Write;
