@@ -1,6 +1,6 @@
 //! Bearings, headings and azimuths as written.
 
-use super::token::{Token, Tokens, reading_step_deg};
+use super::token::{Token, Tokens, figure_deg};
 use crate::angle::Reading;
 use crate::error::BadValue;
 
@@ -25,18 +25,10 @@ pub fn read_direction(text: &str) -> Result<Reading<f64>, BadValue> {
     let refuse = |hint: &'static str| BadValue::new(text, DIRECTION).hint(hint);
     let tokens = Tokens::of(text, DIRECTION)?;
     let (rest, quadrant) = quadrant(tokens.as_slice()).ok_or_else(|| refuse(""))?;
-    let (deg, step_deg) = match rest {
-        [Token::Minus | Token::Plus, ..] => return Err(refuse("a direction has no sign")),
-        [Token::Number { value, decimals }] | [Token::Number { value, decimals }, Token::Degree] => {
-            (*value, reading_step_deg(*value, *decimals))
-        }
-        [Token::Number { value, decimals: 0 }, Token::Fraction(part)]
-        | [Token::Number { value, decimals: 0 }, Token::Fraction(part), Token::Degree]
-        | [Token::Number { value, decimals: 0 }, Token::Degree, Token::Fraction(part)] => {
-            (value + part, if *part == 0.5 { 0.5 } else { 0.25 })
-        }
-        _ => return Err(refuse("")),
-    };
+    if let [Token::Minus | Token::Plus, ..] = rest {
+        return Err(refuse("a direction has no sign"));
+    }
+    let (deg, step_deg) = figure_deg(rest).ok_or_else(|| refuse(""))?;
     let deg = match quadrant {
         None if deg > 360.0 => return Err(refuse("it is over 360")),
         None => deg,

@@ -1,6 +1,6 @@
 //! Signed errors as written: with a letter, a word or a sign.
 
-use super::token::{Token, Tokens, reading_step_deg};
+use super::token::{Token, Tokens, figure_deg};
 use crate::angle::Reading;
 use crate::error::BadValue;
 
@@ -68,18 +68,7 @@ pub fn read_error(text: &str, sign: ErrorSign, letters: Letters) -> Result<Readi
     if side.is_some() && signed.is_some() {
         return Err(refuse("a sign or a letter, not both"));
     }
-    let (deg, step_deg) = match rest {
-        [Token::Number { value, decimals }] | [Token::Number { value, decimals }, Token::Degree] => {
-            (*value, reading_step_deg(*value, *decimals))
-        }
-        [Token::Number { value, decimals: 0 }, Token::Fraction(part)]
-        | [Token::Number { value, decimals: 0 }, Token::Fraction(part), Token::Degree]
-        | [Token::Number { value, decimals: 0 }, Token::Degree, Token::Fraction(part)] => {
-            (value + part, if *part == 0.5 { 0.5 } else { 0.25 })
-        }
-        [Token::Fraction(part)] | [Token::Fraction(part), Token::Degree] => (*part, if *part == 0.5 { 0.5 } else { 0.25 }),
-        _ => return Err(refuse("")),
-    };
+    let (deg, step_deg) = figure_deg(rest).ok_or_else(|| refuse(""))?;
     if deg > 180.0 {
         return Err(refuse("an error is at most 180 degrees"));
     }

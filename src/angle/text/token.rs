@@ -103,10 +103,25 @@ pub(super) fn decimal_step(decimals: u8) -> f64 {
 /// is 0 or 5, otherwise the last decimal.
 ///
 /// One figure cannot tell 247.5 read to halves from 247.5 read to tenths; halves is the honest one, for it claims less.
-pub(super) fn reading_step_deg(value: f64, decimals: u8) -> f64 {
+fn reading_step_deg(value: f64, decimals: u8) -> f64 {
     match decimals {
         0 => 1.0,
         1 if ((value * 10.0).round() as i64) % 5 == 0 => 0.5,
         _ => decimal_step(decimals),
+    }
+}
+
+/// A figure in degrees with or without its mark: a number, a number and a fraction, or a fraction alone; with its step.
+pub(super) fn figure_deg(tokens: &[Token<'_>]) -> Option<(f64, f64)> {
+    let fraction_step_deg = |part: f64| if part == 0.5 { 0.5 } else { 0.25 };
+    match tokens {
+        [Token::Number { value, decimals }] | [Token::Number { value, decimals }, Token::Degree] => {
+            Some((*value, reading_step_deg(*value, *decimals)))
+        }
+        [Token::Number { value, decimals: 0 }, Token::Fraction(part)]
+        | [Token::Number { value, decimals: 0 }, Token::Fraction(part), Token::Degree]
+        | [Token::Number { value, decimals: 0 }, Token::Degree, Token::Fraction(part)] => Some((value + part, fraction_step_deg(*part))),
+        [Token::Fraction(part)] | [Token::Fraction(part), Token::Degree] => Some((*part, fraction_step_deg(*part))),
+        _ => None,
     }
 }
