@@ -54,7 +54,7 @@ impl Table {
         // The line by which spreadsheets name their separator.
         let text = if text.starts_with("sep=") { text.split_once('\n').map_or("", |(_, rest)| rest) } else { text };
         let first = text.lines().find(|l| !l.trim().is_empty()).unwrap_or("");
-        let separator = [b',', b';', b'\t'].into_iter().max_by_key(|s| first.bytes().filter(|b| b == s).count()).unwrap_or(b',');
+        let separator = (*b",;\t").into_iter().max_by_key(|s| first.bytes().filter(|b| b == s).count()).unwrap_or(b',');
         let mut reader = csv::ReaderBuilder::new()
             .delimiter(separator)
             .flexible(true)
