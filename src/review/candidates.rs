@@ -248,7 +248,7 @@ fn directions(row: &Row, context: &Context) -> [Option<f64>; 3] {
     let observation = row.observation;
     let variation = row.worked.variation.map_or(0.0, |v| v.value.deg());
     [
-        row.logged.azimuth.map(|a| a.deg).or_else(|| Some(observation?.gyro_bearing?.value.deg() + row.logged.gyro_error?.deg)),
+        row.logged.azimuth.map(|a| a.value).or_else(|| Some(observation?.gyro_bearing?.value.deg() + row.logged.gyro_error?.value)),
         observation.and_then(|o| o.gyro_bearing).map(|b| b.value.deg() + context.gyro.0),
         observation.and_then(|o| o.compass_bearing).map(|b| b.value.deg() + variation),
     ]

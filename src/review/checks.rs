@@ -1,8 +1,8 @@
 //! Queries that a row raises by itself, whatever the other rows say.
 
 use super::query::{OffHorizon, Query, Sum};
-use super::row::{Row, Written};
-use crate::angle::{Position, wrap_180_deg};
+use super::row::Row;
+use crate::angle::{Position, Reading, wrap_180_deg};
 use crate::compass::{Target, step_u};
 use crate::horizon::{self, RisingOrSetting, Search};
 use crate::limits::Limits;
@@ -108,9 +108,9 @@ fn far_from_horizon(row: &Row, event: RisingOrSetting, limits: &Limits) -> Optio
 /// Logged azimuth less the recomputed one, degrees. Where it is not written, a bearing and its logged error say what it was.
 fn azimuth_off_deg(row: &Row) -> Option<f64> {
     let (logged, observation) = (row.logged, row.observation?);
-    let by_gyro = || Some(observation.gyro_bearing?.value.deg() + logged.gyro_error?.deg);
-    let by_compass = || Some(observation.compass_bearing?.value.deg() + logged.compass_error?.deg);
-    let azimuth = logged.azimuth.map(|a| a.deg).or_else(by_gyro).or_else(by_compass)?;
+    let by_gyro = || Some(observation.gyro_bearing?.value.deg() + logged.gyro_error?.value);
+    let by_compass = || Some(observation.compass_bearing?.value.deg() + logged.compass_error?.value);
+    let azimuth = logged.azimuth.map(|a| a.value).or_else(by_gyro).or_else(by_compass)?;
     Some(wrap_180_deg(azimuth - row.worked.true_azimuth?.deg()))
 }
 
@@ -140,10 +140,10 @@ pub fn sums(row: &Row, route: Route) -> [Option<(Sum, f64, f64)>; 3] {
         Target::Mark { charted, .. } => Some(charted.deg()),
         _ => None,
     };
-    let azimuth = logged.azimuth.map(|a| a.deg).or(charted);
+    let azimuth = logged.azimuth.map(|a| a.value).or(charted);
     // Where the azimuth is not written, the gyro's bearing and error say what it was.
-    let by_gyro = || observation.gyro_bearing.zip(logged.gyro_error).map(|(b, e)| b.value.deg() + e.deg);
-    let less = |figure: Option<Written>, parts: Option<f64>| Some((wrap_180_deg(figure?.deg - parts?), figure?.step_deg));
+    let by_gyro = || observation.gyro_bearing.zip(logged.gyro_error).map(|(b, e)| b.value.deg() + e.value);
+    let less = |figure: Option<Reading<f64>>, parts: Option<f64>| Some((wrap_180_deg(figure?.value - parts?), figure?.step_deg));
     let gyro = less(logged.gyro_error, azimuth.zip(observation.gyro_bearing).map(|(a, b)| a - b.value.deg()));
     let by_bearing = less(logged.compass_error, azimuth.or_else(by_gyro).zip(observation.compass_bearing).map(|(a, b)| a - b.value.deg()));
     let by_headings = less(
@@ -152,7 +152,7 @@ pub fn sums(row: &Row, route: Route) -> [Option<(Sum, f64, f64)>; 3] {
             .gyro_error
             .zip(observation.gyro_heading)
             .zip(observation.compass_heading)
-            .map(|((error, gyro), compass)| gyro.value.deg() + error.deg - compass.value.deg()),
+            .map(|((error, gyro), compass)| gyro.value.deg() + error.value - compass.value.deg()),
     );
     let compass = match (by_bearing, by_headings) {
         (Some(a), Some(b)) if route == Route::Either => Some(if b.0.abs() < a.0.abs() { b } else { a }),
@@ -160,7 +160,7 @@ pub fn sums(row: &Row, route: Route) -> [Option<(Sum, f64, f64)>; 3] {
         // A bearing read, and no azimuth to work it with: nothing to compare with.
         (None, b) => b.filter(|_| observation.compass_bearing.is_none()),
     };
-    let deviation = less(logged.deviation, logged.compass_error.zip(logged.variation).map(|(e, v)| e.deg - v.deg));
+    let deviation = less(logged.deviation, logged.compass_error.zip(logged.variation).map(|(e, v)| e.value - v.value));
     [
         gyro.map(|(by, step)| (Sum::GyroError, by, step)),
         compass.map(|(by, step)| (Sum::CompassError, by, step)),
@@ -201,6 +201,6 @@ fn contains_ignoring_case(text: &str, word: &str) -> bool {
 }
 
 /// Uncertainty of a logged figure against what it was worked from, degrees.
-pub fn written_u_deg(figure: Written) -> f64 {
+pub fn written_u_deg(figure: Reading<f64>) -> f64 {
     step_u(figure.step_deg) * std::f64::consts::SQRT_2
 }

@@ -1,11 +1,10 @@
 //! From an entry of the logbook to a row that can be learned from and judged.
 
-use super::row::{CardFigure, Logged, Names, Row, Written};
-use crate::angle::Reading;
+use super::row::{CardFigure, Names, Row};
 use crate::compass::card::{Card, Cards};
 use crate::compass::{GyroRun, Observation, Worked, work};
 use crate::limits::Limits;
-use crate::logbook::entry::{self, Entry};
+use crate::logbook::entry::Entry;
 use std::sync::LazyLock;
 
 /// What every row is worked with.
@@ -23,7 +22,6 @@ pub struct Desk<'a> {
 #[derive(Debug, Clone)]
 pub struct WorkedEntry<'e> {
     entry: &'e Entry<'e>,
-    logged: Logged,
     card: Option<CardFigure>,
     /// The observation worked.
     pub worked: Worked,
@@ -35,7 +33,7 @@ impl Desk<'_> {
         static NOTHING: LazyLock<Worked> = LazyLock::new(Worked::default);
         let worked = entry.observation.as_ref().map_or_else(|| NOTHING.clone(), |o| work(o, run, self.limits));
         let card = entry.observation.as_ref().and_then(|o| self.card_figure(entry, o, &worked));
-        WorkedEntry { entry, logged: logged(&entry.logged), card, worked }
+        WorkedEntry { entry, card, worked }
     }
 
     fn card_figure(&self, entry: &Entry, observation: &Observation, worked: &Worked) -> Option<CardFigure> {
@@ -53,17 +51,6 @@ impl Desk<'_> {
             _ => return None,
         };
         Some(CardFigure { deviation_deg: deviation.deg(), age_months: card.age_months(at).map(f64::from) })
-    }
-}
-
-fn logged(logged: &entry::Logged) -> Logged {
-    let written = |r: Option<Reading<f64>>| r.map(|r| Written { deg: r.value, step_deg: r.step_deg });
-    Logged {
-        azimuth: written(logged.azimuth),
-        gyro_error: written(logged.gyro_error),
-        compass_error: written(logged.compass_error),
-        variation: written(logged.variation),
-        deviation: written(logged.deviation),
     }
 }
 
@@ -88,7 +75,7 @@ impl WorkedEntry<'_> {
             zone: self.entry.zone,
             observation: self.entry.observation.as_ref(),
             remarks: &self.entry.remarks,
-            logged: &self.logged,
+            logged: &self.entry.logged,
             card: self.card,
             worked: &self.worked,
         }

@@ -6,8 +6,8 @@ use super::curve::Curve;
 use super::fact::Fact;
 use super::order::miles;
 use super::query::Sum;
-use super::row::{Row, Written};
-use crate::angle::wrap_180_deg;
+use super::row::Row;
+use crate::angle::{Reading, wrap_180_deg};
 use crate::limits::Limits;
 use crate::sky::Body;
 use crate::time::UtcInstant;
@@ -151,7 +151,7 @@ pub fn left_of_sums(row: &Row, route: Route) -> f64 {
         return 0.0;
     }
     let figures = [row.logged.gyro_error, row.logged.compass_error, row.logged.deviation];
-    let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Written>)| {
+    let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Reading<f64>>)| {
         sum.zip(figure).map_or(0.0, |((_, by, _), f)| (by / PAPER_U_DEG.hypot(written_u_deg(f))).powi(2))
     };
     sums(row, route).into_iter().zip(figures).map(squares).sum()
@@ -187,7 +187,7 @@ struct Us {
 impl<'a> Ground<'a> {
     pub fn new(row: &'a Row<'a>, context: &'a Context<'a>, plain: Sight) -> Self {
         let (l, budget) = (row.logged, row.worked.azimuth_budget);
-        let paper = |figure: Option<Written>| PAPER_U_DEG.hypot(figure.map_or(0.0, written_u_deg));
+        let paper = |figure: Option<Reading<f64>>| PAPER_U_DEG.hypot(figure.map_or(0.0, written_u_deg));
         let us = Us {
             gyro: row.worked.gyro_error.map_or(0.0, |g| g.u_deg()).max(context.gyro.1),
             azimuth: TABLES_U_DEG.hypot(budget.time_deg).hypot(budget.position_deg).hypot(l.azimuth.map_or(0.0, written_u_deg)),
@@ -212,7 +212,7 @@ impl<'a> Ground<'a> {
         let variation = self.variation_deg(case);
         // What needs no look at the sky comes first.
         if self.row.logged.azimuth.is_some() {
-            self.sums(case, self.row.logged.azimuth.map(|a| a.deg), variation, &mut left)?;
+            self.sums(case, self.row.logged.azimuth.map(|a| a.value), variation, &mut left)?;
         }
         self.logged_variation(case, variation, &mut left);
         if left.sum > most {
@@ -291,7 +291,7 @@ impl<'a> Ground<'a> {
         let worked = case.worked_azimuth(look);
         match self.row.logged.azimuth {
             // A working that has no azimuth cannot have given the logged one.
-            Some(azimuth) => left.angle(Some(azimuth.deg - worked?), self.us.azimuth, case.loose_deg),
+            Some(azimuth) => left.angle(Some(azimuth.value - worked?), self.us.azimuth, case.loose_deg),
             None => self.sums(case, worked, variation, left)?,
         }
         Some(())
@@ -302,7 +302,7 @@ impl<'a> Ground<'a> {
         let (l, used, r) = (self.row.logged, &case.used, &case.results);
         if let Some(error) = l.gyro_error {
             let parts = azimuth.zip(used.gyro).map(|(z, b)| r.gyro_sign * wrap_180_deg(z - b) + r.gyro_by);
-            left.angle(parts.map(|p| error.deg - p), self.us.gyro_error, 0.0);
+            left.angle(parts.map(|p| error.value - p), self.us.gyro_error, 0.0);
         }
         let compass_error = azimuth.zip(used.compass).map(|(z, b)| r.compass_sign * wrap_180_deg(z - b) + r.compass_by);
         if let Some(error) = l.compass_error {
@@ -310,8 +310,8 @@ impl<'a> Ground<'a> {
                 .gyro_error
                 .zip(used.gyro_heading)
                 .zip(used.compass_heading)
-                .map(|((e, g), c)| r.compass_sign * wrap_180_deg(g + e.deg - c) + r.compass_by);
-            let off = |parts: Option<f64>| parts.map(|p| wrap_180_deg(error.deg - p));
+                .map(|((e, g), c)| r.compass_sign * wrap_180_deg(g + e.value - c) + r.compass_by);
+            let off = |parts: Option<f64>| parts.map(|p| wrap_180_deg(error.value - p));
             let off = match (off(compass_error), off(by_headings)) {
                 (Some(a), Some(b)) if b.abs() < a.abs() && self.context.route == Route::Either => Some(b),
                 (a, b) => a.or(b),
@@ -319,15 +319,15 @@ impl<'a> Ground<'a> {
             left.angle(off, self.us.compass_error, 0.0);
         }
         if let Some(deviation) = l.deviation {
-            let applied = l.variation.map(|v| v.deg).or(variation.map(|v| v.0)).map(|v| r.applied_sign * v);
-            let error = l.compass_error.map(|e| e.deg).or(compass_error);
+            let applied = l.variation.map(|v| v.value).or(variation.map(|v| v.0)).map(|v| r.applied_sign * v);
+            let error = l.compass_error.map(|e| e.value).or(compass_error);
             let (parts, loose_deg) = if r.card_by_bearing {
                 let (by_bearing, card_u) = self.deviation_deg_by_bearing(used.compass)?;
                 (Some(by_bearing), card_u)
             } else {
                 (error.zip(applied).map(|(e, v)| r.deviation_sign * wrap_180_deg(e - v) + r.deviation_by), 0.0)
             };
-            left.angle(parts.map(|p| deviation.deg - p), self.us.deviation, loose_deg);
+            left.angle(parts.map(|p| deviation.value - p), self.us.deviation, loose_deg);
         }
         Some(())
     }
@@ -335,7 +335,7 @@ impl<'a> Ground<'a> {
     fn logged_variation(&self, case: &Case, variation: Option<(f64, f64)>, left: &mut Left) {
         if let (Some(written), Some((variation, u))) = (self.row.logged.variation, variation) {
             let expected = case.results.variation_sign * (variation + self.context.variation_off_deg);
-            left.angle(Some(written.deg - expected), self.us.variation.hypot(u), 0.0);
+            left.angle(Some(written.value - expected), self.us.variation.hypot(u), 0.0);
         }
     }
 

@@ -127,7 +127,7 @@ fn order(row: &Row, vessel: &Vessel, at: usize, fact: &Fact, limits: &Limits, ve
 /// By how much the logged variation is expected to be off on this vessel, there and then.
 fn variation(row: &Row, vessel: &Vessel, limits: &Limits, verdict: &mut Verdict) {
     let (Some(written), Some(model)) = (row.logged.variation, row.worked.variation) else { return };
-    let by_deg = wrap_180_deg(written.deg - model.value.deg());
+    let by_deg = wrap_180_deg(written.value - model.value.deg());
     let most_deg = limits.thresholds.variation_differs_deg.max(2.0 * model.u_deg());
     if by_deg.abs() <= most_deg {
         return;

@@ -4,11 +4,12 @@ use super::checks::{Route, comes_out, row_queries, unrounded};
 use super::fact::{Fact, MOST_COMPASSES};
 use super::fleet::Fleet;
 use super::query::Query;
-use super::row::{CardFigure, Logged, Names, Row};
+use super::row::{CardFigure, Names, Row};
 use super::vessel::Vessel;
 use crate::angle::Reading;
 use crate::compass::{GyroType, Observation, Worked, work};
 use crate::limits::Limits;
+use crate::logbook::entry::Logged;
 use crate::time::{Moment, Zone};
 use std::collections::HashMap;
 
@@ -218,7 +219,7 @@ impl Logbook {
         if let (Some(written), Some(field)) = (row.logged.variation, row.worked.field)
             && self.variations.len() < FIGURES
         {
-            let off = crate::angle::wrap_180_deg(written.deg - field.variation.deg());
+            let off = crate::angle::wrap_180_deg(written.value - field.variation.deg());
             self.variations.push((off as f32, field.annual.variation_deg as f32));
         }
         if let (Some(card), Some(deviation)) = (row.card, row.worked.deviation.or(row.worked.deviation_by_comparison))

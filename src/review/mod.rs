@@ -43,6 +43,6 @@ pub use judge::{Verdict, judge};
 pub use learn::Learn;
 pub use pattern::{NotEvaluated, Pattern, PatternId};
 pub use query::{Instrument, OffHorizon, Query, Sum};
-pub use row::{CardFigure, Logged, Names, Row, Written};
+pub use row::{CardFigure, Names, Row};
 pub use slip::{Explanation, Place, Slip};
 pub use summary::{CompassSummary, GyroSummary, NotEvaluatedSummary, PatternSummary, Summary, Tally, VesselSummary};

@@ -1,31 +1,8 @@
 //! What the review reads of one row.
 
 use crate::compass::{Observation, Place, Worked};
+use crate::logbook::entry::Logged;
 use crate::time::{Moment, Zone};
-
-/// A signed figure or a direction as the officer wrote it.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Written {
-    /// The figure, degrees; errors east +.
-    pub deg: f64,
-    /// The step it is written in, degrees: 0.1 for tenths.
-    pub step_deg: f64,
-}
-
-/// What the officer worked out.
-#[derive(Debug, Clone, Copy, PartialEq, Default)]
-pub struct Logged {
-    /// Azimuth.
-    pub azimuth: Option<Written>,
-    /// Gyro error, east +.
-    pub gyro_error: Option<Written>,
-    /// Compass error, east +.
-    pub compass_error: Option<Written>,
-    /// Variation, east +.
-    pub variation: Option<Written>,
-    /// Deviation, east +.
-    pub deviation: Option<Written>,
-}
 
 /// Whose compasses a row speaks of; blank names are names like any other.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
