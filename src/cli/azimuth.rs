@@ -2,6 +2,7 @@
 
 use super::card::CardArgs;
 use super::exit::Exit;
+use super::files::never_over_inputs;
 use super::instruments::Instruments;
 use super::one_row;
 use super::output::{Format, OutputArgs};
@@ -39,6 +40,7 @@ pub struct Args {
 
 /// Works the bearing and writes the answer.
 pub fn run(args: Args) -> Result<Exit> {
+    never_over_inputs([args.card.file(), args.instruments.limits_file()], [&args.output.output])?;
     let (moment, zone) = args.when_where.moment()?;
     let place = args.when_where.place()?;
     let body = option("--body", Body::from_name(&args.body))?;

@@ -23,6 +23,11 @@ pub struct CardArgs {
 }
 
 impl CardArgs {
+    /// The file, where one is given.
+    pub fn file(&self) -> Option<&PathBuf> {
+        self.card.as_ref()
+    }
+
     /// The card's deviation on the heading observed; `None` where no card was given.
     pub fn on(&self, observation: &Observation, utc: UtcInstant, limits: &Limits) -> Result<Option<OnCard>> {
         let (Some(path), Some(heading)) = (&self.card, observation.compass_heading) else { return Ok(None) };

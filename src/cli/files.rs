@@ -42,32 +42,26 @@ impl Input {
         self.file.rewind().map_err(|source| Error::File { path: self.path.clone().unwrap_or_else(|| self.name.clone().into()), source })?;
         Ok(&mut self.file)
     }
-
-    /// Refuses an output that is this very file, whatever it is called.
-    pub fn refuse_as_output(&self, output: Option<&Path>) -> Result<()> {
-        match (&self.path, output) {
-            (Some(input), Some(output)) if same_file::is_same_file(input, output).unwrap_or(false) => {
-                Err(Error::Usage(format!("{} is the log itself: give -o another name, a log is never overwritten", output.display())))
-            }
-            _ => Ok(()),
-        }
-    }
 }
 
-/// Refuses outputs that are the input itself, or each other, whatever they are called.
-pub fn never_over_input<'p>(input: &Path, outputs: impl IntoIterator<Item = &'p Option<PathBuf>>) -> Result<()> {
+/// Refuses outputs that are one of the inputs, or each other, whatever they are called.
+pub fn never_over_inputs<'i, 'o>(
+    inputs: impl IntoIterator<Item = Option<&'i PathBuf>>,
+    outputs: impl IntoIterator<Item = &'o Option<PathBuf>>,
+) -> Result<()> {
     let same = |a: &Path, b: &Path| a == b || same_file::is_same_file(a, b).unwrap_or(false);
-    let mut before = vec![input];
+    let inputs: Vec<&Path> = inputs.into_iter().flatten().map(PathBuf::as_path).collect();
+    let mut before: Vec<&Path> = Vec::new();
     for output in outputs.into_iter().flatten() {
-        if let Some(other) = before.iter().find(|other| same(other, output)) {
-            let what = if *other == input {
-                "the input itself: give another name, what was read is never overwritten"
-            } else {
-                "asked for twice: give two names"
-            };
-            return Err(Error::Usage(format!("{} is {what}", output.display())));
-        }
-        before.push(output);
+        let what = if inputs.iter().any(|input| same(input, output)) {
+            "the input itself: give another name, a log is never overwritten, nor anything else that is read"
+        } else if before.iter().any(|other| same(other, output)) {
+            "asked for twice: give two names"
+        } else {
+            before.push(output);
+            continue;
+        };
+        return Err(Error::Usage(format!("{} is {what}", output.display())));
     }
     Ok(())
 }

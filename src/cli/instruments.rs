@@ -47,6 +47,11 @@ impl Instruments {
         Ok(())
     }
 
+    /// The limits file, where one is given.
+    pub fn limits_file(&self) -> Option<&PathBuf> {
+        self.limits.as_ref()
+    }
+
     /// The limits in force.
     pub fn limits(&self) -> Result<Limits> {
         read_limits(self.limits.as_deref())

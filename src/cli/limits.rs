@@ -22,9 +22,7 @@ pub struct Args {
 
 /// Writes the list.
 pub fn run(args: Args) -> Result<Exit> {
-    if let Some(file) = &args.limits {
-        files::never_over_input(file, [&args.output.output])?;
-    }
+    files::never_over_inputs([args.limits.as_ref()], [&args.output.output])?;
     let in_force = read_limits(args.limits.as_deref())?;
     let answer = match args.output.format {
         Format::Text => limits::text(&in_force),

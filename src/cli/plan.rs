@@ -1,6 +1,7 @@
 //! `shadowpin plan`: what to observe next.
 
 use super::exit::Exit;
+use super::files::never_over_inputs;
 use super::instruments::read_limits;
 use super::output::{Format, OutputArgs};
 use super::when_where::{WhenWhere, option};
@@ -65,6 +66,7 @@ pub fn run(args: Args) -> Result<Exit> {
     if args.output.format == Format::Csv {
         return Err(Error::Usage("plan answers as text or json".into()));
     }
+    never_over_inputs([args.limits.as_ref()], [&args.output.output])?;
     let (moment, zone) = args.when_where.moment()?;
     let position = args.when_where.place()?.position;
     let number =

@@ -1,7 +1,7 @@
 //! `shadowpin review`: a whole log, row by row.
 
 use super::exit::Exit;
-use super::files::{Input, RowsOut};
+use super::files::{Input, RowsOut, never_over_inputs};
 use super::instruments::read_limits;
 use super::read;
 use super::when_where::{DateOrderArg, date_order};
@@ -95,9 +95,8 @@ struct Review<'a> {
 
 /// Runs the review.
 pub fn run(args: Args) -> Result<Exit> {
+    never_over_inputs([Some(&args.log), args.card.as_ref(), args.limits.as_ref()], [&args.output, &args.summary])?;
     let mut input = Input::open(&args.log)?;
-    input.refuse_as_output(args.output.as_deref())?;
-    input.refuse_as_output(args.summary.as_deref())?;
     let limits = read_limits(args.limits.as_deref())?;
     let cards = args.card.as_deref().map(|path| read::content(path).and_then(|(name, bytes)| read_cards(&name, &bytes))).transpose()?;
     let review = Review::new(&args, &limits, cards.as_ref());

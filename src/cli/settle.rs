@@ -44,7 +44,7 @@ pub struct Args {
 
 /// Judges the run-up and writes the answer.
 pub fn run(args: Args) -> Result<Exit> {
-    files::never_over_input(&args.run_up, [&args.output.output, &args.chart])?;
+    files::never_over_inputs([Some(&args.run_up), args.limits.as_ref()], [&args.output.output, &args.chart])?;
     let limits = read_limits(args.limits.as_deref())?;
     let true_heading = args.true_heading.as_deref().map(|h| option("--true-heading", read_direction(h))).transpose()?;
     let latitude = args.lat.as_deref().map(|l| option("--lat", read_latitude(l))).transpose()?.map(|l| l.value);

@@ -89,7 +89,7 @@ impl Every {
 }
 
 pub fn run(args: Args) -> Result<Exit> {
-    files::never_over_input(&args.file, [&args.output.output, &args.card_out])?;
+    files::never_over_inputs([Some(&args.file)], [&args.output.output, &args.card_out])?;
     let utc = args.utc.as_deref().map(|text| read::utc("--utc", text)).transpose()?;
     let swung_at = match (&args.lat, &args.lon) {
         (Some(lat), Some(lon)) => Some(read::position(("--lat", lat), ("--lon", lon))?),

@@ -132,8 +132,11 @@ pub fn comes_out(row: &Row, limits: &Limits) -> Option<(bool, bool)> {
     Some((fits(bearing.1), fits(either.1)))
 }
 
+/// A subtraction: which, by how much it does not come out, degrees, and the step its result is written in.
+pub type OffSum = Option<(Sum, f64, f64)>;
+
 /// Each logged error less what its own logged parts give, with the step it is written in.
-pub fn sums(row: &Row, route: Route) -> [Option<(Sum, f64, f64)>; 3] {
+pub fn sums(row: &Row, route: Route) -> [OffSum; 3] {
     let logged = row.logged;
     let Some(observation) = row.observation else { return [None; 3] };
     let charted = match observation.target {

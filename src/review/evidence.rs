@@ -1,7 +1,7 @@
 //! All that a row and its neighbours say, against what a slip would have made of it.
 
 use super::case::{Case, Look, Memo, Sight};
-use super::checks::{Route, dark_from_deg, sums, written_u_deg};
+use super::checks::{OffSum, Route, dark_from_deg, sums, written_u_deg};
 use super::curve::Curve;
 use super::fact::Fact;
 use super::order::miles;
@@ -151,7 +151,7 @@ pub fn left_of_sums(row: &Row, route: Route) -> f64 {
         return 0.0;
     }
     let figures = [row.logged.gyro_error, row.logged.compass_error, row.logged.deviation];
-    let squares = |(sum, figure): (Option<(Sum, f64, f64)>, Option<Reading<f64>>)| {
+    let squares = |(sum, figure): (OffSum, Option<Reading<f64>>)| {
         sum.zip(figure).map_or(0.0, |((_, by, _), f)| (by / PAPER_U_DEG.hypot(written_u_deg(f))).powi(2))
     };
     sums(row, route).into_iter().zip(figures).map(squares).sum()

@@ -140,3 +140,33 @@ fn cards_are_doubted_aloud() {
     let ran = shadowpin(&["review", log_path.to_str().unwrap(), "--card", card_path.to_str().unwrap(), "-o", "/dev/null"], b"");
     assert!(ran.err.contains("card-near-nil"), "{}", ran.err);
 }
+
+/// Nor is a card or a limits file, by any command that reads one.
+#[test]
+fn nothing_that_is_read_is_written_over() {
+    let folder = tempfile::tempdir().unwrap();
+    let (card, limits) = (folder.path().join("card.csv"), folder.path().join("limits.toml"));
+    let (card_text, limits_text) = ("compass_heading,deviation\n0,1\n90,2\n180,-1\n270,-2\n", "[limits]\ndeviation = 4\n");
+    std::fs::write(&card, card_text).unwrap();
+    std::fs::write(&limits, limits_text).unwrap();
+    let (card_name, limits_name) = (card.to_str().unwrap(), limits.to_str().unwrap());
+    let place = ["--utc", "2026-06-14T06:12Z", "--lat", "36S", "--lon", "130E"];
+    let log = fixture("logs/demo.csv");
+    for (command, file, option) in [
+        (vec!["review", log.to_str().unwrap()], card_name, "--card"),
+        (vec!["review", log.to_str().unwrap()], limits_name, "--limits"),
+        ([&["azimuth", "--body", "sun", "--compass-heading", "200"][..], &place].concat(), card_name, "--card"),
+        ([&["azimuth", "--body", "sun"][..], &place].concat(), limits_name, "--limits"),
+        ([&["amplitude", "--event", "setting"][..], &place].concat(), limits_name, "--limits"),
+        ([&["plan"][..], &place].concat(), limits_name, "--limits"),
+        (vec!["limits"], limits_name, "--limits"),
+        (vec!["settle", "fixtures/runups/runup_00.csv"], limits_name, "--limits"),
+    ] {
+        let line = [&command[..], &[option, file, "-o", file]].concat();
+        let ran = shadowpin(&line, b"");
+        assert_eq!(ran.code, Some(2), "{line:?}");
+        assert!(ran.err.contains("is the input itself"), "{line:?} {}", ran.err);
+    }
+    assert_eq!(std::fs::read_to_string(&card).unwrap(), card_text);
+    assert_eq!(std::fs::read_to_string(&limits).unwrap(), limits_text);
+}
