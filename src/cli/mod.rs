@@ -6,6 +6,7 @@ mod card;
 mod columns;
 mod exit;
 mod files;
+mod in_order;
 mod instruments;
 mod limits;
 mod one_row;

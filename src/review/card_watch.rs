@@ -33,6 +33,14 @@ impl<'c> CardWatch<'c> {
         }
     }
 
+    /// Adds what the rows that follow say of the same cards.
+    pub fn join(&mut self, later: Self) {
+        for ((_, kept), (_, more)) in self.seen.iter_mut().zip(later.seen) {
+            let free = KEPT.saturating_sub(kept.len());
+            kept.extend(more.into_iter().take(free));
+        }
+    }
+
     /// One sentence for each doubt: whose card, and what.
     pub fn doubts(&self, limits: &Limits) -> Vec<String> {
         let months = limits.thresholds.card_months.round() as u32;

@@ -138,6 +138,12 @@ impl Fact {
         self.flags & flag != 0
     }
 
+    /// The same row where the vessel's gyros and compasses have other indices.
+    #[must_use]
+    pub fn renamed(&self, gyro: u8, compass: u8) -> Self {
+        Self { gyro, compass: compass | (self.compass & AFFECTED), ..*self }
+    }
+
     /// Index of the magnetic compass among the vessel's.
     pub fn compass(&self) -> u8 {
         self.compass & !AFFECTED

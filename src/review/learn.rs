@@ -3,6 +3,7 @@
 use super::checks::{Route, comes_out, row_queries, unrounded};
 use super::fact::{Fact, MOST_COMPASSES};
 use super::fleet::Fleet;
+use super::prints::Prints;
 use super::query::Query;
 use super::row::{CardFigure, Names, Row};
 use super::vessel::Vessel;
@@ -12,9 +13,10 @@ use crate::limits::Limits;
 use crate::logbook::entry::Logged;
 use crate::time::{Moment, Zone};
 use std::collections::HashMap;
+use std::num::NonZeroUsize;
+use std::sync::atomic::{AtomicUsize, Ordering};
+use std::sync::{Mutex, PoisonError};
 
-/// Rows of a vessel that are looked at for a copy.
-const RECENT: usize = 64;
 /// Affected rows of a vessel that are kept whole.
 const SAMPLE: usize = 24;
 /// Figures of a vessel's logged variation, and of its deviation against a card, that are kept.
@@ -24,10 +26,11 @@ const LEAST_ROOM: usize = 64;
 /// A gyro error over this is an affected row before any run is known, degrees.
 const WILD_DEG: f64 = 6.0;
 
-/// Feeds on rows, in the order of the file.
+/// Feeds on rows, in the order of the file. Parts of a log can be learned apart, on threads of their own, and joined in order: the
+/// outcome is that of feeding every row to one.
 #[derive(Debug, Clone)]
-pub struct Learn {
-    limits: Limits,
+pub struct Learn<'a> {
+    limits: &'a Limits,
     vessels: Vec<Logbook>,
     by_name: HashMap<String, usize>,
     queries: Vec<Query>,
@@ -43,7 +46,7 @@ pub struct Logbook {
     pub facts: Vec<Fact>,
     /// Rows with what they copy.
     pub repeats: Vec<(u64, u64)>,
-    recent: Vec<(u64, u64)>,
+    prints: Prints,
     pub observations: u64,
     pub affected: u64,
     /// Rows whose logged errors are off their parts by no more than the readings' own rounding.
@@ -79,6 +82,12 @@ impl Steps {
         self.readings += 1;
         self.halves += u64::from(on(0.5));
         self.wholes += u64::from(on(1.0));
+    }
+
+    fn join(&mut self, later: Self) {
+        self.readings += later.readings;
+        self.halves += later.halves;
+        self.wholes += later.wholes;
     }
 
     /// The step that nearly all readings are written in, degrees.
@@ -137,32 +146,34 @@ fn scattered(mut z: u64) -> u64 {
     z ^ (z >> 31)
 }
 
-impl Learn {
+impl<'a> Learn<'a> {
     /// Nothing learned yet.
-    pub fn new(limits: Limits) -> Self {
+    pub fn new(limits: &'a Limits) -> Self {
         Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new() }
+    }
+
+    /// Place of a vessel, made where it is new.
+    fn place_of(&mut self, vessel: &str) -> usize {
+        if let Some(at) = self.by_name.get(vessel) {
+            return *at;
+        }
+        self.vessels.push(Logbook { name: vessel.to_owned(), ..Logbook::default() });
+        self.by_name.insert(vessel.to_owned(), self.vessels.len() - 1);
+        self.vessels.len() - 1
     }
 
     /// Learns one row.
     pub fn feed(&mut self, row: &Row) {
-        let at = match self.by_name.get(row.names.vessel) {
-            Some(at) => *at,
-            None => {
-                let at = self.vessels.len();
-                self.vessels.push(Logbook { name: row.names.vessel.to_owned(), ..Logbook::default() });
-                self.by_name.insert(row.names.vessel.to_owned(), at);
-                at
-            }
-        };
+        let at = self.place_of(row.names.vessel);
         self.queries.clear();
-        row_queries(row, Route::Either, &self.limits, &mut self.queries, &mut Vec::new());
+        row_queries(row, Route::Either, self.limits, &mut self.queries, &mut Vec::new());
         let unrounded = unrounded(row, &self.queries);
         let wild = row.worked.gyro_error.is_some_and(|g| g.value.deg().abs() > WILD_DEG);
         let affected =
             !unrounded && (wild || self.queries.iter().any(|q| !matches!(q, Query::TooHigh { .. } | Query::ReasonDoubtful { .. })));
         if let Some(vessel) = self.vessels.get_mut(at) {
             vessel.unrounded += u64::from(unrounded);
-            if let Some((by_bearing, either)) = comes_out(row, &self.limits) {
+            if let Some((by_bearing, either)) = comes_out(row, self.limits) {
                 vessel.by_bearing += u64::from(by_bearing);
                 vessel.by_headings_only += u64::from(either && !by_bearing);
             }
@@ -170,10 +181,45 @@ impl Learn {
         }
     }
 
-    /// What the rows say together.
-    pub fn finish(self) -> Fleet {
-        let vessels = self.vessels.into_iter().map(|book| Vessel::of(book, &self.limits)).collect();
-        Fleet::new(vessels, self.by_name, self.limits)
+    /// Adds what was learned of the rows that follow.
+    pub fn join(&mut self, later: Learn) {
+        for book in later.vessels {
+            let at = self.place_of(&book.name);
+            if let Some(vessel) = self.vessels.get_mut(at) {
+                vessel.join(book);
+            }
+        }
+    }
+
+    /// What the rows say together, worked out on that many threads; the same on any number.
+    pub fn finish(self, threads: NonZeroUsize) -> Fleet {
+        let mut books: Vec<Mutex<Option<Logbook>>> = self.vessels.into_iter().map(|b| Mutex::new(Some(b))).collect();
+        let limits = self.limits;
+        let next = AtomicUsize::new(0);
+        // The longest first, lest the last thread sits over it alone.
+        let mut order: Vec<usize> = (0..books.len()).collect();
+        order.sort_by_key(|&i| std::cmp::Reverse(books.get_mut(i).and_then(|b| Some(b.get_mut().ok()?.as_ref()?.facts.len()))));
+        let work = || {
+            let mut done = Vec::new();
+            while let Some(&at) = order.get(next.fetch_add(1, Ordering::Relaxed)) {
+                let book = books.get(at).and_then(|b| b.lock().unwrap_or_else(PoisonError::into_inner).take());
+                done.extend(book.map(|b| (at, Vessel::of(b, limits))));
+            }
+            done
+        };
+        let mut vessels = std::thread::scope(|scope| {
+            let others: Vec<_> = (1..threads.get().min(order.len())).map(|_| scope.spawn(work)).collect();
+            let mut all = work();
+            for other in others {
+                match other.join() {
+                    Ok(done) => all.extend(done),
+                    Err(cause) => std::panic::resume_unwind(cause),
+                }
+            }
+            all
+        });
+        vessels.sort_by_key(|(at, _)| *at);
+        Fleet::new(vessels.into_iter().map(|(_, v)| v).collect(), self.by_name, limits.clone())
     }
 }
 
@@ -209,7 +255,10 @@ impl Logbook {
             self.facts.reserve_exact((self.facts.len() / 8).max(LEAST_ROOM));
         }
         self.facts.push(Fact::of(row, gyro, compass, affected));
-        self.copy_of_an_earlier(row);
+        // Without a time, rows of the same readings are nothing odd; and neither is a second "overcast".
+        if let (Some(moment), Some(observation)) = (row.moment, row.observation) {
+            self.repeats.extend(self.prints.push(fingerprint(moment, observation), row.number));
+        }
         let Some(observation) = row.observation else { return };
         self.observations += 1;
         self.other_gyro |= observation.gyro_type == GyroType::Other;
@@ -238,6 +287,18 @@ impl Logbook {
     /// Keeps an even sample of the affected rows, the same whatever their order.
     fn keep(&mut self, row: &Row, observation: &Observation, gyro: u8) {
         let order = scattered(row.number);
+        self.keep_as(order, || Kept {
+            order,
+            number: row.number,
+            zone: row.zone,
+            observation: *observation,
+            logged: *row.logged,
+            card: row.card,
+            gyro,
+        });
+    }
+
+    fn keep_as(&mut self, order: u64, kept: impl FnOnce() -> Kept) {
         if self.sample.len() >= SAMPLE {
             match self.sample.last() {
                 Some(last) if last.order > order => self.sample.pop(),
@@ -245,21 +306,44 @@ impl Logbook {
             };
         }
         let at = self.sample.partition_point(|k| k.order < order);
-        let kept = Kept { order, number: row.number, zone: row.zone, observation: *observation, logged: *row.logged, card: row.card, gyro };
-        self.sample.insert(at, kept);
+        self.sample.insert(at, kept());
     }
 
-    fn copy_of_an_earlier(&mut self, row: &Row) {
-        // Without a time, rows of the same readings are nothing odd; and neither is a second "overcast".
-        let (Some(moment), Some(observation)) = (row.moment, row.observation) else { return };
-        let fingerprint = fingerprint(moment, observation);
-        if let Some((_, earlier)) = self.recent.iter().find(|(f, _)| *f == fingerprint) {
-            self.repeats.push((row.number, *earlier));
+    /// Adds what was learned of the vessel's rows that follow.
+    fn join(&mut self, mut later: Self) {
+        if self.facts.is_empty() {
+            // The first of a vessel's rows.
+            *self = later;
+            return;
         }
-        if self.recent.len() == RECENT {
-            self.recent.remove(0);
+        let gyros: Vec<u8> = later.gyros.drain(..).map(|name| index(&mut self.gyros, |have| *have == name, || name.clone())).collect();
+        let compasses: Vec<u8> =
+            later.compasses.drain(..).map(|name| index(&mut self.compasses, |have| *have == name, || name.clone())).collect();
+        let renamed = |names: &[u8], at: u8| names.get(usize::from(at)).copied().unwrap_or(0);
+        let room = self.facts.capacity() - self.facts.len();
+        if room < later.facts.len() {
+            // By an eighth, not by doubling: of ten million rows hardly more than they need is held.
+            self.facts.reserve_exact(later.facts.len().max(self.facts.len() / 8));
         }
-        self.recent.push((fingerprint, row.number));
+        self.facts.extend(later.facts.iter().map(|fact| fact.renamed(renamed(&gyros, fact.gyro), renamed(&compasses, fact.compass()))));
+        self.repeats.append(&mut later.repeats);
+        self.prints.join(later.prints, &mut self.repeats);
+        self.observations += later.observations;
+        self.affected += later.affected;
+        self.unrounded += later.unrounded;
+        self.by_bearing += later.by_bearing;
+        self.by_headings_only += later.by_headings_only;
+        self.gyro_steps.join(later.gyro_steps);
+        self.compass_steps.join(later.compass_steps);
+        self.other_gyro |= later.other_gyro;
+        self.has_speed |= later.has_speed;
+        let free = FIGURES.saturating_sub(self.variations.len());
+        self.variations.extend(later.variations.iter().take(free));
+        let free = FIGURES.saturating_sub(self.against_card.len());
+        self.against_card.extend(later.against_card.iter().take(free).map(|&(c, off, day)| (renamed(&compasses, c), off, day)));
+        for kept in later.sample {
+            self.keep_as(kept.order, || Kept { gyro: renamed(&gyros, kept.gyro), ..kept });
+        }
     }
 }
 

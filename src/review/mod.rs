@@ -28,6 +28,7 @@ mod learn;
 mod order;
 mod pattern;
 mod patterns;
+mod prints;
 mod query;
 mod robust;
 mod row;

@@ -87,11 +87,11 @@ pub fn review(rows: &[Read], limits: &Limits) -> (Fleet, Vec<Verdict>) {
 
 /// Both passes, with what a card says of each row.
 pub fn review_in(rows: &[Read], limits: &Limits, card: impl Fn(&Read) -> Option<CardFigure>) -> (Fleet, Vec<Verdict>) {
-    let mut learn = Learn::new(limits.clone());
+    let mut learn = Learn::new(limits);
     for row in rows.iter().filter(|r| !r.problem) {
         row.with_card(None, limits, card(row), |r| learn.feed(r));
     }
-    let fleet = learn.finish();
+    let fleet = learn.finish(std::num::NonZeroUsize::MIN);
     let judged = |row: &Read| row.with_card(Some(&fleet), limits, card(row), |r| judge(r, &fleet));
     let verdicts = rows.iter().map(|row| if row.problem { Verdict::default() } else { judged(row) }).collect();
     (fleet, verdicts)

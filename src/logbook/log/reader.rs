@@ -32,6 +32,8 @@ impl Cells for LogRow<'_> {
 pub struct LogReader<R: Read> {
     records: Records<R>,
     rows: u64,
+    /// A fault behind the last block, for the next call.
+    failed: Option<Error>,
     /// The header's cells as they stand.
     pub titles: Record,
     /// Where each column stands.
@@ -59,7 +61,7 @@ impl<R: Read> LogReader<R> {
             return Err(content(titles.line, message));
         }
         let header = Header::read(titles.cells(), again).map_err(|message| content(titles.line, message))?;
-        Ok(Self { records, rows: 0, titles, header })
+        Ok(Self { records, rows: 0, failed: None, titles, header })
     }
 
     /// What parts the cells.
@@ -82,5 +84,53 @@ impl<R: Read> LogReader<R> {
         }
         self.rows += 1;
         Ok(Some(LogRow { header: &self.header, record, number: self.rows }))
+    }
+
+    /// The next rows, as many as make a block; false where there is none left. What was read before a fault is a block of its own.
+    ///
+    /// # Errors
+    /// [`Error::Stream`] where reading fails.
+    pub fn fill(&mut self, block: &mut Block) -> Result<bool> {
+        (block.used, block.first) = (0, self.rows + 1);
+        let mut bytes = 0;
+        while block.used < BLOCK_ROWS && bytes < BLOCK_BYTES {
+            if block.used == block.records.len() {
+                block.records.push(Record::default());
+            }
+            let Some(record) = block.records.get_mut(block.used) else { break };
+            match self.failed.take().map_or_else(|| self.records.next(record), Err) {
+                Ok(true) => {}
+                Ok(false) => break,
+                Err(error) if block.used == 0 => return Err(error),
+                Err(error) => {
+                    self.failed = Some(error);
+                    break;
+                }
+            }
+            self.rows += 1;
+            bytes += record.size();
+            block.used += 1;
+        }
+        Ok(block.used > 0)
+    }
+}
+
+/// Rows of one block at the most.
+const BLOCK_ROWS: usize = 1024;
+/// Bytes that end a block of long rows.
+const BLOCK_BYTES: usize = 1 << 18;
+
+/// Some rows that follow each other, in buffers that are used again for the next.
+#[derive(Debug, Default)]
+pub struct Block {
+    records: Vec<Record>,
+    used: usize,
+    first: u64,
+}
+
+impl Block {
+    /// The rows, named by that header.
+    pub fn rows<'r>(&'r self, header: &'r Header) -> impl Iterator<Item = LogRow<'r>> {
+        self.records.iter().take(self.used).zip(self.first..).map(move |(record, number)| LogRow { header, record, number })
     }
 }

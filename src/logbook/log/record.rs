@@ -44,6 +44,11 @@ impl Record {
         self.used
     }
 
+    /// Bytes in all cells together.
+    pub fn size(&self) -> usize {
+        self.used.checked_sub(1).and_then(|last| self.ends.get(last)).copied().unwrap_or(0)
+    }
+
     /// Whether every cell is blank.
     pub fn is_blank(&self) -> bool {
         !self.too_long && self.cells().all(|c| c.iter().all(u8::is_ascii_whitespace))
