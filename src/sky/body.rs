@@ -2,6 +2,8 @@
 
 use super::stars::Star;
 use crate::error::BadValue;
+use std::collections::HashMap;
+use std::sync::LazyLock;
 
 /// A body of the sky whose place can be computed.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -88,11 +90,27 @@ impl Letters {
         self.bytes.get(..self.len).unwrap_or_default()
     }
 
-    /// Whether `name` has the same letters.
-    fn are(&self, name: &str) -> bool {
-        self.as_bytes().iter().copied().eq(name.bytes().filter(u8::is_ascii_alphanumeric).map(|b| b.to_ascii_lowercase()))
-    }
 }
+
+/// Every spelling that is known, by its letters.
+static NAMES: LazyLock<HashMap<Vec<u8>, Body>> = LazyLock::new(|| {
+    let mut names = HashMap::new();
+    let mut add = |name: &str, body| {
+        if let Some(letters) = Letters::of(name) {
+            names.entry(letters.as_bytes().to_vec()).or_insert(body);
+        }
+    };
+    for (other, name) in SPELLINGS {
+        Body::all().filter(|body| body.name() == name).for_each(|body| add(other, body));
+    }
+    for body in Body::all() {
+        add(body.name(), body);
+        if let Body::Star(star) = body {
+            add(star.bayer(), body);
+        }
+    }
+    names
+});
 
 impl Body {
     /// Every body: the sun, the moon, the planets, the stars in the almanac's order.
@@ -129,14 +147,10 @@ impl Body {
             BadValue::new(text, "the Sun, the Moon, Venus, Mars, Jupiter, Saturn or a navigational star").hint(hint)
         };
         let letters = Letters::of(text).filter(|l| l.len > 0).ok_or_else(unknown)?;
-        let spelt = SPELLINGS.iter().find(|(other, _)| letters.are(other)).map(|(_, name)| *name);
-        Self::all()
-            .find(|body| match (spelt, body) {
-                (Some(name), body) => body.name() == name,
-                (None, Self::Star(star)) => letters.are(star.name()) || letters.are(star.bayer()),
-                (None, body) => letters.are(body.name()),
-            })
-            .ok_or_else(unknown)
+        if letters.as_bytes() == b"sun" {
+            return Ok(Self::Sun);
+        }
+        NAMES.get(letters.as_bytes()).copied().ok_or_else(unknown)
     }
 
     /// Visual magnitude, smaller is brighter; `None` for the sun and the moon, which need no darkness.

@@ -1,6 +1,7 @@
 //! Bearings, headings and azimuths as written.
 
-use super::token::{Token, Tokens, figure_deg};
+use super::plain::{Plain, plain};
+use super::token::{Token, Tokens, figure_deg, reading_step_deg};
 use crate::angle::Reading;
 use crate::error::BadValue;
 
@@ -22,6 +23,11 @@ const DIRECTION: &str = "a direction from 000 to 360, such as 045, 045.5, 045½ 
 /// # Ok::<(), shadowpin::error::BadValue>(())
 /// ```
 pub fn read_direction(text: &str) -> Result<Reading<f64>, BadValue> {
+    if let Some(Plain { sign: None, value, decimals }) = plain(text)
+        && value <= 360.0
+    {
+        return Ok(Reading::new(crate::angle::wrap_360_deg(value), reading_step_deg(value, decimals)));
+    }
     let refuse = |hint: &'static str| BadValue::new(text, DIRECTION).hint(hint);
     let tokens = Tokens::of(text, DIRECTION)?;
     let (rest, quadrant) = quadrant(tokens.as_slice()).ok_or_else(|| refuse(""))?;

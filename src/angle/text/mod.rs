@@ -2,6 +2,7 @@
 
 mod direction;
 mod number;
+mod plain;
 mod position;
 mod signed;
 mod token;

@@ -1,5 +1,6 @@
 //! Plain numbers in a range.
 
+use super::plain::plain;
 use crate::error::BadValue;
 
 /// A plain decimal number within `range`; `what` is what the message says was wanted, for instance "a speed in knots, 0 to 100".
@@ -7,6 +8,11 @@ use crate::error::BadValue;
 /// # Errors
 /// [`BadValue`] for anything else: words, exponents, infinities, a decimal comma (with a hint).
 pub fn read_number(text: &str, range: std::ops::RangeInclusive<f64>, what: &'static str) -> Result<f64, BadValue> {
+    if let Some(plain) = plain(text) {
+        // Not -0.
+        let value = plain.sign.unwrap_or(1.0) * plain.value + 0.0;
+        return if range.contains(&value) { Ok(value) } else { Err(BadValue::new(text, what)) };
+    }
     let trimmed = text.trim();
     let plain = trimmed.strip_prefix('\u{2212}');
     let (negative, digits) = match (plain, trimmed.strip_prefix('-'), trimmed.strip_prefix('+')) {

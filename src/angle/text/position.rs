@@ -1,5 +1,6 @@
 //! Latitudes and longitudes in every form that logs are written in.
 
+use super::plain::plain;
 use super::token::{Token, Tokens, decimal_step};
 use crate::angle::{Latitude, Longitude, Reading};
 use crate::error::BadValue;
@@ -110,6 +111,9 @@ impl Axis {
 
 /// Signed degrees and the step written.
 fn coordinate(text: &str, expected: &'static str, axis: Axis) -> Result<(f64, f64), BadValue> {
+    if let Some(plain) = plain(text) {
+        return Ok((plain.sign.unwrap_or(1.0) * plain.value, decimal_step(plain.decimals)));
+    }
     let refuse = |hint: &'static str| BadValue::new(text, expected).hint(hint);
     let tokens = Tokens::of(text, expected)?;
     let mut rest = tokens.as_slice();

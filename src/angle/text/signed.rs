@@ -1,6 +1,7 @@
 //! Signed errors as written: with a letter, a word or a sign.
 
-use super::token::{Token, Tokens, figure_deg};
+use super::plain::plain;
+use super::token::{Token, Tokens, figure_deg, reading_step_deg};
 use crate::angle::Reading;
 use crate::error::BadValue;
 
@@ -43,6 +44,16 @@ const LOW_HIGH: &str = "a gyro error such as 1.5E, 0.5L, 0.5 high, -1.5 or 1½ W
 /// ```
 pub fn read_error(text: &str, sign: ErrorSign, letters: Letters) -> Result<Reading<f64>, BadValue> {
     let expected = if letters == Letters::LowHighToo { LOW_HIGH } else { EAST_WEST };
+    let unlettered = match sign {
+        ErrorSign::EastPlus => 1.0,
+        ErrorSign::HighPlus => -1.0,
+    };
+    if let Some(plain) = plain(text)
+        && plain.value <= 180.0
+    {
+        let factor = plain.sign.unwrap_or(1.0) * unlettered;
+        return Ok(Reading::new(factor * plain.value + 0.0, reading_step_deg(plain.value, plain.decimals)));
+    }
     let refuse = |hint: &'static str| BadValue::new(text, expected).hint(hint);
     let tokens = Tokens::of(text, expected)?;
     let mut rest = tokens.as_slice();
@@ -72,10 +83,6 @@ pub fn read_error(text: &str, sign: ErrorSign, letters: Letters) -> Result<Readi
     if deg > 180.0 {
         return Err(refuse("an error is at most 180 degrees"));
     }
-    let unlettered = match sign {
-        ErrorSign::EastPlus => 1.0,
-        ErrorSign::HighPlus => -1.0,
-    };
     let factor = side.unwrap_or_else(|| signed.unwrap_or(1.0) * unlettered);
     Ok(Reading::new(factor * deg + 0.0, step_deg))
 }

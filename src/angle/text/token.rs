@@ -96,14 +96,15 @@ fn number(text: &str) -> Option<(Token<'static>, usize)> {
 
 /// The step of a number with so many decimals.
 pub(super) fn decimal_step(decimals: u8) -> f64 {
-    10_f64.powi(-i32::from(decimals))
+    const STEPS: [f64; 13] = [1.0, 1e-1, 1e-2, 1e-3, 1e-4, 1e-5, 1e-6, 1e-7, 1e-8, 1e-9, 1e-10, 1e-11, 1e-12];
+    STEPS.get(usize::from(decimals)).copied().unwrap_or(1e-12)
 }
 
 /// The step that a figure in degrees was probably read in: a fraction's own, whole degrees, halves where the one decimal
 /// is 0 or 5, otherwise the last decimal.
 ///
 /// One figure cannot tell 247.5 read to halves from 247.5 read to tenths; halves is the honest one, for it claims less.
-fn reading_step_deg(value: f64, decimals: u8) -> f64 {
+pub(super) fn reading_step_deg(value: f64, decimals: u8) -> f64 {
     match decimals {
         0 => 1.0,
         1 if ((value * 10.0).round() as i64) % 5 == 0 => 0.5,

@@ -30,6 +30,14 @@ pub fn readable(bytes: &[u8]) -> Cow<'_, str> {
 
 /// A cell's bytes as trimmed text.
 pub(crate) fn text_of(bytes: &[u8]) -> Cow<'_, str> {
+    // Nearly every cell is blank, or begins and ends with something to read.
+    let (Some(first), Some(last)) = (bytes.first(), bytes.last()) else { return Cow::Borrowed("") };
+    if first.is_ascii_graphic()
+        && last.is_ascii_graphic()
+        && let Ok(text) = std::str::from_utf8(bytes)
+    {
+        return Cow::Borrowed(text);
+    }
     match readable(bytes) {
         Cow::Borrowed(text) => Cow::Borrowed(text.trim()),
         Cow::Owned(text) => Cow::Owned(text.trim().to_owned()),

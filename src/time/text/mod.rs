@@ -2,6 +2,7 @@
 
 mod clock;
 mod date;
+mod full;
 mod leap;
 pub mod write;
 mod zone;
@@ -50,6 +51,9 @@ pub fn read_utc(text: &str) -> Result<Moment, BadValue> {
 /// As [`read_utc`].
 pub fn read_utc_ordered(text: &str, order: DateOrder) -> Result<Moment, BadValue> {
     let whole = |bad: BadValue| BadValue { value: BadValue::new(text, "").value, ..bad };
+    if let Some((date, time)) = full::read(text) {
+        return moment(date, time, Zone::UTC).map_err(whole);
+    }
     let (date, clock, tail) = parted(text, UTC)?;
     let zone = match tail {
         None => Zone::UTC,
