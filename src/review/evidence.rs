@@ -201,7 +201,8 @@ impl<'a> Ground<'a> {
         let mut ground = Self { row, context, memo, plain, plain_look, deviation: UNKNOWN_DEVIATION, around: Left::default(), us };
         ground.deviation = ground.deviation_deg(plain.compass_heading);
         let mut around = Left::default();
-        ground.around(&plain, plain_look, &mut around);
+        track(&plain, context, &mut around);
+        ground.sky(&plain, plain_look, &mut around);
         ground.around = around;
         ground
     }
@@ -215,10 +216,17 @@ impl<'a> Ground<'a> {
             self.sums(case, self.row.logged.azimuth.map(|a| a.value), variation, &mut left)?;
         }
         self.logged_variation(case, variation, &mut left);
+        let (so, used) = (&case.so, &case.used);
+        let as_written = so.utc == self.plain.utc && so.position == self.plain.position && so.target == self.plain.target;
+        if as_written {
+            left.sum += self.around.sum;
+            left.count += self.around.count;
+        } else {
+            track(so, self.context, &mut left);
+        }
         if left.sum > most {
             return None;
         }
-        let (so, used) = (&case.so, &case.used);
         let look = self.look(so);
         if look.is_none() && so.body().is_some() {
             return None;
@@ -229,11 +237,8 @@ impl<'a> Ground<'a> {
         if left.sum > most {
             return None;
         }
-        if so.utc == self.plain.utc && so.position == self.plain.position && so.target == self.plain.target {
-            left.sum += self.around.sum;
-            left.count += self.around.count;
-        } else {
-            self.around(so, look, &mut left);
+        if !as_written {
+            self.sky(so, look, &mut left);
         }
         Some(left)
     }
@@ -346,8 +351,8 @@ impl<'a> Ground<'a> {
         Some((value, u.hypot(CARD_U_DEG)))
     }
 
-    /// The body against horizon and daylight, the position against the track, the time against its neighbours.
-    fn around(&self, so: &Sight, look: Option<Look>, left: &mut Left) {
+    /// The body against horizon and daylight.
+    fn sky(&self, so: &Sight, look: Option<Look>, left: &mut Left) {
         if let (Some(body), Some(look)) = (so.body(), look) {
             if let Some(off) = look.off_horizon {
                 left.other(off.abs() / HORIZON_U_DEG);
@@ -358,7 +363,6 @@ impl<'a> Ground<'a> {
             }
             self.dark(body, so, left);
         }
-        track(so, self.context, left);
     }
 
     fn dark(&self, body: Body, so: &Sight, left: &mut Left) {

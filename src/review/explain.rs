@@ -67,15 +67,18 @@ pub fn explain(row: &Row, context: &Context, gain: f64) -> Vec<Explanation> {
     };
     let left_deg = |total: f64| (total / weight.max(1.0)).sqrt();
     let most = most_left(EVIDENCE);
+    let good = |t: &&Tried| serves(t.raw, t.count) && t.total() + gain < none;
     let mut list = slips_at_hand(row, &sight, context);
-    let mut tried = search.each(&list, most);
+    let mut tried = Vec::new();
+    // The best good one's total, and what drops out beside it.
+    let mut bound = f64::INFINITY;
+    search.within(&list, most, &mut bound, good, &mut tried);
     // No slip in time, place or body mends a subtraction.
     if left_of_sums(row, context.route) <= most {
         let more = slips_of_the_sky(row, &sight, context);
-        tried.extend(search.each(&more, most));
+        search.within(&more, most, &mut bound, good, &mut tried);
         list.extend(more);
     }
-    let good = |t: &&Tried| serves(t.raw, t.count) && t.total() + gain < none;
     if !tried.iter().any(|t| good(&t)) {
         // Two together: now whatever a single one leaves counts.
         if left_of_sums(row, context.route) > most {
@@ -111,6 +114,17 @@ struct Search<'a> {
 }
 
 impl Search<'_> {
+    /// Adds what each slip leaves, those aside that leave more than `most`, or drop out beside a good one already found.
+    fn within(&self, list: &[Candidate], most: f64, bound: &mut f64, good: impl Fn(&&Tried) -> bool, tried: &mut Vec<Tried>) {
+        for candidate in list {
+            let Some(one) = self.attempt(&self.plain, candidate, most.min(*bound - price(candidate))) else { continue };
+            if good(&&one) {
+                *bound = bound.min(one.total() + DROP);
+            }
+            tried.push(one);
+        }
+    }
+
     /// What each slip leaves, those aside that leave more than `most`.
     fn each(&self, list: &[Candidate], most: f64) -> Vec<Tried> {
         list.iter().filter_map(|c| self.attempt(&self.plain, c, most)).collect()
@@ -127,7 +141,8 @@ impl Search<'_> {
         let mut best: Option<(Candidate, Candidate, f64)> = None;
         for first in tried.iter().take(PAIR_FROM) {
             for second in list.iter().filter(|c| c.slip != first.candidate.slip) {
-                let Some(both) = self.attempt(&first.case, second, most_left(EVIDENCE)) else { continue };
+                let beaten = best.as_ref().map_or(f64::INFINITY, |b| b.2 - first.price - PAIR_PRICE);
+                let Some(both) = self.attempt(&first.case, second, most_left(EVIDENCE).min(beaten)) else { continue };
                 let total = both.total() + first.price + PAIR_PRICE;
                 if serves(both.raw, both.count) && total + GAIN < none && best.as_ref().is_none_or(|b| total < b.2) {
                     best = Some((first.candidate, *second, total));

@@ -85,43 +85,79 @@ pub fn fit(columns: &[f64], y: &[f64], prior_sd: &[f64], least_scale: f64) -> Op
     if let (Some(first), Some(middle)) = (result.coefficients.first_mut(), median(&mut y.to_vec())) {
         *first = middle;
     }
-    for round in 0..24 {
-        let residuals: Vec<f64> = columns.chunks(p).zip(y).map(|(x, y)| y - result.value(x)).collect();
+    let mut residuals = vec![0.0; y.len()];
+    let mut sums = Sums::new(p);
+    // Huber's rounds only lead to the place that the biweight starts from.
+    let (mut by_huber, mut rounds) = (true, 0);
+    while rounds < 24 {
+        rounds += 1;
+        for ((x, y), residual) in columns.chunks_exact(p).zip(y).zip(&mut residuals) {
+            *residual = y - result.value(x);
+        }
         result.scale = scale_about_zero(residuals.iter().copied())?.max(least_scale);
-        let (mut normal, mut right) = (DMatrix::<f64>::zeros(p, p), DVector::<f64>::zeros(p));
-        for ((x, y), r) in columns.chunks(p).zip(y).zip(&residuals) {
-            let z = (r / result.scale).abs();
-            let weight = if round < 12 {
+        sums.clear();
+        for ((x, y), residual) in columns.chunks_exact(p).zip(y).zip(&residuals) {
+            let z = (residual / result.scale).abs();
+            let weight = if by_huber {
                 (HUBER / z).min(1.0)
             } else if z < BIWEIGHT {
                 (1.0 - (z / BIWEIGHT).powi(2)).powi(2)
             } else {
                 continue;
-            } / result.scale.powi(2);
-            for (i, xi) in x.iter().enumerate() {
-                let wx = weight * xi;
-                if wx == 0.0 {
-                    continue;
-                }
-                right[i] += wx * y;
-                for (j, xj) in x.iter().enumerate() {
-                    normal[(i, j)] += wx * xj;
-                }
-            }
+            };
+            sums.add(x, *y, weight);
         }
-        for (i, sd) in prior_sd.iter().enumerate() {
-            normal[(i, i)] += sd.powi(-2);
-        }
+        let (normal, right) = sums.with_prior(prior_sd, result.scale);
         let inverse = normal.cholesky()?.inverse();
         let next = &inverse * right;
         let change = next.iter().zip(&result.coefficients).map(|(a, b)| (a - b).abs()).fold(0.0, f64::max);
         result.coefficients = next.iter().copied().collect();
         result.covariance = inverse.iter().copied().collect();
-        if round >= 12 && change < 1e-4 {
+        if by_huber {
+            by_huber = change >= 1e-2 && rounds < 12;
+        } else if change < 1e-4 {
             break;
         }
     }
     Some(result)
+}
+
+/// The sums of a weighted fit; of the symmetric ones only the half below the diagonal.
+struct Sums {
+    p: usize,
+    normal: Vec<f64>,
+    right: Vec<f64>,
+}
+
+impl Sums {
+    fn new(p: usize) -> Self {
+        Self { p, normal: vec![0.0; p * p], right: vec![0.0; p] }
+    }
+
+    fn clear(&mut self) {
+        self.normal.fill(0.0);
+        self.right.fill(0.0);
+    }
+
+    fn add(&mut self, x: &[f64], y: f64, weight: f64) {
+        let rows = self.normal.chunks_exact_mut(self.p).zip(&mut self.right).zip(x).enumerate();
+        for (i, ((row, right), xi)) in rows {
+            let wx = weight * xi;
+            *right += wx * y;
+            for (sum, xj) in row.iter_mut().zip(x).take(i + 1) {
+                *sum += wx * xj;
+            }
+        }
+    }
+
+    /// The normal equations, every row counted by `scale`, and a prior about 0 with those standard deviations.
+    fn with_prior(&self, prior_sd: &[f64], scale: f64) -> (DMatrix<f64>, DVector<f64>) {
+        let unit = scale.powi(-2);
+        let sum = |i: usize, j: usize| self.normal.get(i.max(j) * self.p + i.min(j)).copied().unwrap_or(0.0) * unit;
+        let prior = |i: usize| prior_sd.get(i).map_or(0.0, |sd| sd.powi(-2));
+        let normal = DMatrix::from_fn(self.p, self.p, |i, j| sum(i, j) + if i == j { prior(i) } else { 0.0 });
+        (normal, DVector::from_iterator(self.p, self.right.iter().map(|r| r * unit)))
+    }
 }
 
 #[cfg(test)]
