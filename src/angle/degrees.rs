@@ -5,7 +5,14 @@
 /// `rem_euclid` alone answers 360.0 for the smallest negative numbers; this never does, and never answers -0.
 /// Undefined: not-a-number and infinities come back as not-a-number; readers of text refuse them before.
 pub fn wrap_360_deg(deg: f64) -> f64 {
-    let wrapped = deg.rem_euclid(360.0);
+    // Nearly all come within a turn of the circle, where the remainder is an addition or nothing.
+    let wrapped = if (0.0..360.0).contains(&deg) {
+        deg
+    } else if (-360.0..0.0).contains(&deg) {
+        deg + 360.0
+    } else {
+        deg.rem_euclid(360.0)
+    };
     if wrapped >= 360.0 { 0.0 } else { wrapped + 0.0 }
 }
 

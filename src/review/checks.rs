@@ -187,11 +187,11 @@ pub fn unrounded(row: &Row, queries: &[Query]) -> bool {
 
 /// What the sky says to the reason given for having no observation. Cloud is never contradicted.
 fn reason(row: &Row) -> Option<Query> {
-    let sun_altitude_deg = sun_altitude_deg(row.moment?.utc, row.place?.position);
     let said = |word: &str| contains_ignoring_case(row.remarks, word);
     if !said("sun") {
         return None;
     }
+    let sun_altitude_deg = sun_altitude_deg(row.moment?.utc, row.place?.position);
     if said("high") || said("zenith") || said("overhead") {
         return (sun_altitude_deg < MAY_BE_HIGH_DEG).then_some(Query::ReasonDoubtful { sun_altitude_deg, said_high: true });
     }

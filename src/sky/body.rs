@@ -89,7 +89,6 @@ impl Letters {
     fn as_bytes(&self) -> &[u8] {
         self.bytes.get(..self.len).unwrap_or_default()
     }
-
 }
 
 /// Every spelling that is known, by its letters.

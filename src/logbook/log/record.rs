@@ -51,7 +51,7 @@ impl Record {
 
     /// Whether every cell is blank.
     pub fn is_blank(&self) -> bool {
-        !self.too_long && self.cells().all(|c| c.iter().all(u8::is_ascii_whitespace))
+        !self.too_long && self.bytes.get(..self.size()).is_none_or(|bytes| bytes.iter().all(u8::is_ascii_whitespace))
     }
 }
 
