@@ -8,6 +8,11 @@ use std::path::{Path, PathBuf};
 /// The name under which standard input stands on a command line and in messages.
 pub const STANDARD_INPUT: &str = "-";
 
+/// Whether standard input is meant.
+pub fn is_standard_input(path: &Path) -> bool {
+    path.as_os_str() == STANDARD_INPUT
+}
+
 /// A log that can be read from its start more than once.
 #[derive(Debug)]
 pub struct Input {
@@ -20,7 +25,7 @@ pub struct Input {
 impl Input {
     /// Opens a file, or copies standard input (`-`) to a private file that has no name and is gone when the program ends.
     pub fn open(path: &Path) -> Result<Self> {
-        if path.as_os_str() == STANDARD_INPUT {
+        if is_standard_input(path) {
             let spool = || -> io::Result<File> {
                 let mut file = tempfile::tempfile()?;
                 io::copy(&mut io::stdin().lock(), &mut file)?;
@@ -35,6 +40,29 @@ impl Input {
             return Err(failed(io::Error::new(io::ErrorKind::IsADirectory, "is a folder, not a log")));
         }
         Ok(Self { file, name: path.display().to_string(), path: Some(path.to_owned()) })
+    }
+
+    /// What was gathered in a temporary file; `name` is what messages call it.
+    pub fn temporary(file: File, name: String) -> Self {
+        Self { file, name, path: None }
+    }
+
+    /// Bytes of the content, where it is a file.
+    pub fn size(&self) -> Option<u64> {
+        self.file.metadata().ok().filter(std::fs::Metadata::is_file).map(|m| m.len())
+    }
+
+    /// The first bytes of the content.
+    pub fn start(&mut self) -> Result<Vec<u8>> {
+        let (mut start, name) = (Vec::new(), self.name.clone());
+        let read = self.rewound()?.take(8).read_to_end(&mut start);
+        read.map(|_| start).map_err(|source| Error::File { path: self.path.clone().unwrap_or_else(|| name.into()), source })
+    }
+
+    /// The file itself, at its start.
+    pub fn file(&mut self) -> Result<&mut File> {
+        self.rewound()?;
+        Ok(&mut self.file)
     }
 
     /// The content from its start.
@@ -90,6 +118,24 @@ impl RowsOut {
         folder.metadata().map_err(failed)?;
         let file = tempfile::Builder::new().prefix(".rows-").tempfile_in(folder).map_err(failed)?;
         Ok(Self::Whole(BufWriter::with_capacity(BUFFER, file), path.to_owned()))
+    }
+
+    /// Writes out what is left of a run that was broken off, and answers where its rows stand: a file of that name is not touched.
+    pub fn leave(self) -> Result<String> {
+        match self {
+            Self::Whole(out, path) => {
+                let mut beside = path.into_os_string();
+                beside.push(".partial");
+                let beside = PathBuf::from(beside);
+                let name = beside.display().to_string();
+                Self::Whole(out, beside).finish().map(|()| name)
+            }
+            Self::Stream(out, path) => {
+                let name = path.display().to_string();
+                Self::Stream(out, path).finish().map(|()| name)
+            }
+            Self::Standard(out) => Self::Standard(out).finish().map(|()| "the output".to_owned()),
+        }
     }
 
     /// Writes out what is left and puts the file in its place.

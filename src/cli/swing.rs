@@ -4,6 +4,7 @@ use super::exit::Exit;
 use super::files;
 use super::output::{Format, OutputArgs};
 use super::read;
+use super::sheets;
 use clap::ValueEnum;
 use shadowpin::angle::text::{read_direction, write};
 use shadowpin::angle::{CompassBearing, Position};
@@ -13,7 +14,8 @@ use shadowpin::compass::field::{self, Field};
 use shadowpin::compass::{Place, Target, work};
 use shadowpin::error::{Error, NoAnswer, Result};
 use shadowpin::limits::Limits;
-use shadowpin::logbook::swing::{BadRow, SightRow, Swing, SwingRow, read_swing};
+use shadowpin::logbook::TableForm;
+use shadowpin::logbook::swing::{BadRow, COLUMNS, SightRow, Swing, SwingRow, read_swing};
 use shadowpin::notice::Notice;
 use shadowpin::report::swing::{Elsewhere, Particulars, SwingReport, headings, table_of};
 use shadowpin::time::{Moment, UtcInstant};
@@ -25,8 +27,17 @@ use std::path::PathBuf;
 The file has the columns compass_heading and deviation (1.5W or -1.5), or compass_heading, compass_bearing and body with utc, lat and lon, \
 or compass_heading, compass_bearing and charted_bearing. It may have turn (clockwise, anticlockwise).")]
 pub struct Args {
-    /// The swing; - for standard input
+    /// The swing: CSV or a workbook (.xlsx); - for standard input
     file: PathBuf,
+    /// The sheet of a workbook, instead of its first
+    #[arg(long, value_name = "NAME")]
+    sheet: Option<String>,
+    /// Column names other than ours: a TOML file with lines such as deviation = "Dev"
+    #[arg(long, value_name = "FILE")]
+    columns: Option<PathBuf>,
+    /// Figures are written with a decimal comma
+    #[arg(long)]
+    decimal_comma: bool,
     /// Spacing of the table, degrees
     #[arg(long, value_name = "DEGREES", value_enum, default_value_t = Every::Fifteen)]
     every: Every,
@@ -89,15 +100,19 @@ impl Every {
 }
 
 pub fn run(args: Args) -> Result<Exit> {
-    files::never_over_inputs([Some(&args.file)], [&args.output.output, &args.card_out])?;
+    files::never_over_inputs([Some(&args.file), args.columns.as_ref()], [&args.output.output, &args.card_out])?;
     let utc = args.utc.as_deref().map(|text| read::utc("--utc", text)).transpose()?;
     let swung_at = match (&args.lat, &args.lon) {
         (Some(lat), Some(lon)) => Some(read::position(("--lat", lat), ("--lon", lon))?),
         _ => None,
     };
     let asked = args.heading.as_deref().map(heading).transpose()?;
-    let (name, bytes) = read::content(&args.file)?;
-    let mut swing = read_swing(&name, &bytes)?;
+    let form = TableForm { names: sheets::names(args.columns.as_deref())?, decimal_comma: args.decimal_comma };
+    let (name, bytes, sheet) = sheets::table(&args.file, args.sheet.as_deref(), &form.names, &COLUMNS)?;
+    let mut swing = read_swing(&name, &bytes, &form)?;
+    if let Some(sheet) = &sheet {
+        swing.bad_rows.iter_mut().for_each(|bad| bad.why = sheets::with_cell(sheet, bad.number, &bad.why));
+    }
     let by_option = swung_at.zip(utc);
     work_out(&mut swing, by_option);
     let readings: Vec<DeviationReading> = swing.rows.iter().map(|row| row.reading).collect();

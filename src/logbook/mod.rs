@@ -4,9 +4,13 @@ pub mod card;
 pub mod columns;
 pub mod entry;
 mod figures;
+pub mod gather;
 pub mod log;
+pub mod names;
 pub mod runup;
+pub mod sheet;
 pub mod swing;
 mod table;
 
 pub use figures::read_day;
+pub use table::TableForm;

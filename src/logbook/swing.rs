@@ -1,7 +1,7 @@
 //! Reading a swing: headings with the deviation on each, or with the bearing that shows it.
 
 use super::figures::{read_day, read_deviation};
-use super::table::{Column, Row, Table};
+use super::table::{Column, Row, Table, TableForm};
 use crate::angle::text::{read_direction, read_latitude, read_longitude};
 use crate::angle::{CompassBearing, MagneticBearing, Position, TrueBearing};
 use crate::compass::curve::{DeviationReading, Turn};
@@ -10,6 +10,10 @@ use crate::error::{BadValue, Result};
 use crate::sky::Body;
 use crate::time::UtcInstant;
 use crate::time::text::read_utc;
+
+/// The names of the columns of a swing.
+pub const COLUMNS: [&str; 10] =
+    ["compass_heading", "magnetic_heading", "deviation", "turn", "lat", "lon", "utc", "body", "charted_bearing", "compass_bearing"];
 
 /// A row that cannot be used, with the reason.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -80,8 +84,8 @@ struct Columns {
 ///
 /// # Errors
 /// [`crate::error::Error::Content`] where the file as a whole cannot be used. Single rows that cannot are listed.
-pub fn read_swing(name: &str, bytes: &[u8]) -> Result<Swing> {
-    let table = Table::read(name, bytes)?;
+pub fn read_swing(name: &str, bytes: &[u8], form: &TableForm) -> Result<Swing> {
+    let table = Table::read_as(name, bytes, form)?;
     let columns = Columns {
         compass_heading: table.column("compass_heading"),
         magnetic_heading: table.column("magnetic_heading"),

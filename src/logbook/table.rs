@@ -1,9 +1,19 @@
 //! Small tables: a card, a swing, a run-up. A header and rows of a few figures, read whole.
 
+use super::names::ColumnNames;
 use crate::error::{Error, Result};
 
 /// A table larger than this, bytes, is no card or swing (our own).
 const LARGEST: usize = 16 << 20;
+
+/// The form of a small table, where it is not what is usual.
+#[derive(Debug, Clone, Default)]
+pub struct TableForm {
+    /// Names that some columns have instead of ours.
+    pub names: ColumnNames,
+    /// Figures are written with a decimal comma though commas part the cells.
+    pub decimal_comma: bool,
+}
 
 /// A small table with its header.
 #[derive(Debug)]
@@ -45,6 +55,11 @@ impl Row {
 impl Table {
     /// Reads comma, semicolon or tab separated text; in the latter two a decimal comma is read as a point.
     pub(crate) fn read(name: &str, bytes: &[u8]) -> Result<Self> {
+        Self::read_as(name, bytes, &TableForm::default())
+    }
+
+    /// The same of another form.
+    pub(crate) fn read_as(name: &str, bytes: &[u8], form: &TableForm) -> Result<Self> {
         let content = |message: String| Error::Content { file: name.to_owned(), line: 0, message };
         if bytes.len() > LARGEST {
             return Err(content(format!("{} bytes are too many for a card or a swing", bytes.len())));
@@ -70,10 +85,15 @@ impl Table {
                 continue;
             }
             if header.is_empty() {
-                header = record.iter().map(str::to_ascii_lowercase).collect();
+                if let Some(message) = form.names.missing(record.iter()) {
+                    return Err(content(message));
+                }
+                let ours = |title: &str| form.names.ours(title).map_or_else(|| title.to_ascii_lowercase(), str::to_owned);
+                header = record.iter().map(ours).collect();
                 continue;
             }
-            let cell = |cell: &str| if separator == b',' { cell.to_owned() } else { cell.replace(',', ".") };
+            let points = separator == b',' && !form.decimal_comma;
+            let cell = |cell: &str| if points { cell.to_owned() } else { cell.replace(',', ".") };
             rows.push(Row { number: rows.len() + 1, line, cells: record.iter().map(cell).collect() });
         }
         if header.is_empty() {

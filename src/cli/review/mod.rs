@@ -1,21 +1,22 @@
 //! `shadowpin review`: a whole log, row by row.
 
+mod log;
 mod passes;
 mod problems;
 mod row;
 
 use super::exit::Exit;
-use super::files::{Input, RowsOut, never_over_inputs};
+use super::files::{RowsOut, never_over_inputs};
 use super::in_order::threads;
 use super::instruments::read_limits;
+use super::interrupt;
 use super::read;
-use super::when_where::{DateOrderArg, date_order};
 use clap::{Args as ClapArgs, ValueEnum};
+use log::{LogArgs, OpenLog};
 use passes::Passes;
-use shadowpin::angle::text::ErrorSign;
+use problems::Place;
 use shadowpin::error::{Error, Result};
 use shadowpin::logbook::card::read_cards;
-use shadowpin::logbook::entry::ReadAs;
 use shadowpin::logbook::log::LogReader;
 use shadowpin::report::log_rows::RowsAs;
 use shadowpin::report::review_text;
@@ -30,23 +31,14 @@ enum RowForm {
     Json,
 }
 
-#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
-enum SignArg {
-    /// East, or a gyro that reads low, is +
-    EastPlus,
-    /// A gyro that reads high is +
-    HighPlus,
-}
-
 /// Works every row of a log anew, and says which entries need an explanation and what probably happened.
 #[derive(Debug, ClapArgs)]
 #[command(after_help = "Example:\n  shadowpin review fixtures/logs/demo.csv -o reviewed.csv --summary summary.json\n\n\
     Rows go to standard output or -o, the summary for a person to standard error. Nothing in the log is ever corrected.\n\
     Exit: 0 nothing to report, 1 queries, 3 rows that could not be used, 2 could not run.")]
 pub struct Args {
-    /// The log (CSV), or - for standard input
-    #[arg(value_name = "LOG")]
-    log: PathBuf,
+    #[command(flatten)]
+    log: LogArgs,
     /// Write the rows to this file, never the log itself
     #[arg(short, long, value_name = "FILE")]
     output: Option<PathBuf>,
@@ -65,18 +57,6 @@ pub struct Args {
     /// Limits file (TOML)
     #[arg(long, value_name = "FILE")]
     limits: Option<PathBuf>,
-    /// Order of dates written in figures, where they are not 2026-06-14
-    #[arg(long, value_enum)]
-    date_order: Option<DateOrderArg>,
-    /// Figures are written with a decimal comma
-    #[arg(long)]
-    decimal_comma: bool,
-    /// What a logged gyro error without a letter means
-    #[arg(long, value_enum, default_value_t = SignArg::EastPlus)]
-    logged_sign: SignArg,
-    /// The log is an earlier output: replace the columns that were added
-    #[arg(long)]
-    again: bool,
     /// Exit 0 also with queries or problems, for engines that take anything else for failure
     #[arg(long)]
     exit_zero: bool,
@@ -85,35 +65,46 @@ pub struct Args {
     quiet: bool,
 }
 
-impl Args {
-    fn read_as(&self) -> ReadAs {
-        let logged_sign = match self.logged_sign {
-            SignArg::EastPlus => ErrorSign::EastPlus,
-            SignArg::HighPlus => ErrorSign::HighPlus,
-        };
-        ReadAs { decimal_comma: self.decimal_comma, date_order: date_order(self.date_order), logged_sign }
-    }
-}
-
 /// Runs the review.
 pub fn run(args: Args) -> Result<Exit> {
-    never_over_inputs([Some(&args.log), args.card.as_ref(), args.limits.as_ref()], [&args.output, &args.summary])?;
-    let mut input = Input::open(&args.log)?;
+    let inputs = args.log.files()?;
+    never_over_inputs(inputs.iter().map(Some).chain([args.card.as_ref(), args.limits.as_ref()]), [&args.output, &args.summary])?;
+    let OpenLog { mut input, form, places, notes } = args.log.open()?;
     let limits = read_limits(args.limits.as_deref())?;
     let cards = args.card.as_deref().map(|path| read::content(path).and_then(|(name, bytes)| read_cards(&name, &bytes))).transpose()?;
     let desk = Desk { limits: &limits, cards: cards.as_ref(), card_as_given: args.card_as_given };
-    let form = if args.format == RowForm::Json { RowsAs::JsonLines } else { RowsAs::Csv };
-    let passes = Passes { desk, read_as: args.read_as(), form, threads: threads() };
-    let name = input.name.clone();
-    let log = LogReader::new(input.rewound()?, &name, args.again)?;
+    let rows_as = if args.format == RowForm::Json { RowsAs::JsonLines } else { RowsAs::Csv };
+    let (name, size) = (input.name.clone(), input.size());
+    let passes = Passes {
+        desk,
+        read_as: args.log.read_as(),
+        rows_as,
+        titled: form.header.is_none(),
+        place: Place { log: &name, places: places.as_ref() },
+        threads: threads(),
+        size,
+        quiet: args.quiet,
+    };
+    interrupt::watch();
+    let log = LogReader::open(input.rewound()?, &name, &form)?;
     if !args.quiet {
-        log.header.hints.iter().for_each(|hint| eprintln!("{name}, line {}: {hint}", log.titles.line));
+        notes.iter().for_each(|note| eprintln!("{note}"));
+        let line = if places.is_none() { format!(", line {}", log.titles.line) } else { String::new() };
+        log.header.hints.iter().for_each(|hint| eprintln!("{name}{line}: {hint}"));
     }
     let (fleet, doubts) = passes.learn(log)?;
+    if interrupt::asked() {
+        return Err(Error::Usage("stopped while the log was read the first time: nothing was written".into()));
+    }
     let mut out = RowsOut::open(args.output.as_deref())?;
-    let (tally, problems) = passes.judge(LogReader::new(input.rewound()?, &name, args.again)?, &fleet, &mut out)?;
-    out.finish()?;
+    let (tally, problems) = passes.judge(LogReader::open(input.rewound()?, &name, &form)?, &fleet, &mut out)?;
     let summary = Summary::of(&fleet, &tally);
+    if interrupt::asked() {
+        let rows = summary.rows;
+        let place = out.leave()?;
+        return Err(Error::Usage(format!("stopped: {place} holds the first {rows} rows, each of them whole, and no summary was made")));
+    }
+    out.finish()?;
     if let Some(path) = &args.summary {
         write_summary(path, &summary)?;
     }

@@ -1,6 +1,6 @@
 //! One row of a log, read, judged and written.
 
-use super::problems::Problems;
+use super::problems::{Place, Problems};
 use shadowpin::compass::Target;
 use shadowpin::error::BadValue;
 use shadowpin::logbook::entry::{Entry, Faults, ReadAs, read_entry};
@@ -57,6 +57,8 @@ pub struct Judging<'a> {
     pub fleet: &'a Fleet,
     /// The form of the rows.
     pub rows: &'a LogRows,
+    /// How messages say where a row stands.
+    pub place: Place<'a>,
 }
 
 impl Judged {
@@ -66,7 +68,7 @@ impl Judged {
         let entry = entry(row, with.read_as, &mut self.faults);
         let problem = self.faults.in_one();
         if !self.faults.is_empty() {
-            self.problems.add(row.record.line, row.number, &problem);
+            self.problems.add(with.place, row, &self.faults);
         }
         match &entry {
             Some(entry) => self.judge(row, entry, &problem, with),

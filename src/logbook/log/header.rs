@@ -2,6 +2,7 @@
 
 use crate::error::{BadValue, edits};
 use crate::logbook::columns::{ADDED, Column};
+use crate::logbook::names::ColumnNames;
 
 /// Where each column stands, and which stand there that are not ours to read.
 #[derive(Debug, Clone)]
@@ -22,7 +23,16 @@ impl Header {
     /// The message for the whole file: nothing in it, a column twice, a column that would be added already there, or no time, place
     /// or readings at all, with the nearest names.
     pub fn read<'c>(cells: impl Iterator<Item = &'c [u8]>, again: bool) -> Result<Self, String> {
-        let names: Vec<String> = cells.map(|c| String::from_utf8_lossy(c).trim().to_ascii_lowercase()).collect();
+        Self::read_as(cells, again, &ColumnNames::default())
+    }
+
+    /// As [`Header::read`], with other names for some columns.
+    ///
+    /// # Errors
+    /// As [`Header::read`].
+    pub fn read_as<'c>(cells: impl Iterator<Item = &'c [u8]>, again: bool, others: &ColumnNames) -> Result<Self, String> {
+        let ours = |name: String| others.ours(&name).map_or(name, str::to_owned);
+        let names: Vec<String> = cells.map(|c| ours(String::from_utf8_lossy(c).trim().to_ascii_lowercase())).collect();
         if names.iter().all(String::is_empty) {
             return Err("the first row is blank: a header with the columns' names was expected".into());
         }

@@ -7,5 +7,5 @@ mod record;
 
 pub use cells::{Cells, readable};
 pub use header::Header;
-pub use reader::{Block, LogReader, LogRow};
+pub use reader::{Block, LogForm, LogReader, LogRow};
 pub use record::{LONGEST_ROW, MOST_CELLS, Record};

@@ -5,7 +5,8 @@ use super::header::Header;
 use super::record::{LONGEST_ROW, MOST_CELLS, Record, Records};
 use crate::error::{Error, Result};
 use crate::logbook::columns::Column;
-use std::io::Read;
+use crate::logbook::names::ColumnNames;
+use std::io::{Chain, Cursor, Read};
 
 /// A row of a log with the header that names its cells.
 #[derive(Debug, Clone, Copy)]
@@ -28,9 +29,20 @@ impl Cells for LogRow<'_> {
     }
 }
 
+/// The form of a log, where it is not what is usual.
+#[derive(Debug, Clone, Default)]
+pub struct LogForm {
+    /// The columns that this program adds may be there from an earlier run and are to be replaced.
+    pub again: bool,
+    /// Names that some columns have instead of ours.
+    pub names: ColumnNames,
+    /// The header, of a log whose first row is data already.
+    pub header: Option<String>,
+}
+
 /// Reads a log.
 pub struct LogReader<R: Read> {
-    records: Records<R>,
+    records: Records<Chain<Cursor<Vec<u8>>, R>>,
     rows: u64,
     /// A fault behind the last block, for the next call.
     failed: Option<Error>,
@@ -47,9 +59,22 @@ impl<R: Read> LogReader<R> {
     /// # Errors
     /// [`Error::Content`] for a file without a usable header; [`Error::Stream`] where reading fails.
     pub fn new(source: R, name: &str, again: bool) -> Result<Self> {
-        let mut records = Records::new(source)?;
+        Self::open(source, name, &LogForm { again, ..LogForm::default() })
+    }
+
+    /// As [`LogReader::new`], for a log of another form.
+    ///
+    /// # Errors
+    /// As [`LogReader::new`]; a header that is given is checked as one that is read.
+    pub fn open(source: R, name: &str, form: &LogForm) -> Result<Self> {
+        let given = form.header.as_ref().map_or_else(String::new, |header| format!("{header}\n"));
+        let mut records = Records::new(Cursor::new(given.into_bytes()).chain(source))?;
         let mut titles = Record::default();
         let content = |line, message: String| Error::Content { file: name.to_owned(), line, message };
+        if form.header.is_some() {
+            // It stands above the first line.
+            records.line = 0;
+        }
         if records.unusable_separator {
             return Err(content(1, "sep= names nothing that can part cells: a comma, semicolon, tab, | ^ or ~ was expected".into()));
         }
@@ -60,7 +85,7 @@ impl<R: Read> LogReader<R> {
             let message = format!("the header is longer than {LONGEST_ROW} bytes or {MOST_CELLS} cells: is a quote never closed?");
             return Err(content(titles.line, message));
         }
-        let header = Header::read(titles.cells(), again).map_err(|message| content(titles.line, message))?;
+        let header = Header::read_as(titles.cells(), form.again, &form.names).map_err(|message| content(titles.line, message))?;
         Ok(Self { records, rows: 0, failed: None, titles, header })
     }
 
@@ -129,6 +154,16 @@ pub struct Block {
 }
 
 impl Block {
+    /// Number of rows.
+    pub fn count(&self) -> usize {
+        self.used
+    }
+
+    /// Bytes of the rows, as far as a delimiter stands behind each cell.
+    pub fn bytes(&self) -> usize {
+        self.records.iter().take(self.used).map(|r| r.size() + r.width()).sum()
+    }
+
     /// The rows, named by that header.
     pub fn rows<'r>(&'r self, header: &'r Header) -> impl Iterator<Item = LogRow<'r>> {
         self.records.iter().take(self.used).zip(self.first..).map(move |(record, number)| LogRow { header, record, number })

@@ -62,7 +62,8 @@ pub(super) struct Records<R: Read> {
     buffer: Vec<u8>,
     filled: usize,
     taken: usize,
-    line: u64,
+    /// Line of the next byte, from 1.
+    pub line: u64,
     /// The byte that lines are counted by: a line feed, or a carriage return where the first line ends in that alone.
     line_end: u8,
     /// What parts the cells.
