@@ -5,6 +5,7 @@ pub mod columns;
 pub mod entry;
 mod figures;
 pub mod log;
+pub mod nmea;
 pub mod runup;
 pub mod swing;
 mod table;
