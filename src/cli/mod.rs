@@ -8,6 +8,7 @@ mod exit;
 mod files;
 mod instruments;
 mod limits;
+mod nmea;
 mod one_row;
 mod output;
 mod plan;

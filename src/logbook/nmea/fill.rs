@@ -21,6 +21,9 @@ pub enum Item {
 }
 
 impl Item {
+    /// All of them.
+    pub const ALL: [Self; 5] = [Self::Time, Self::Position, Self::GyroHeading, Self::CompassHeading, Self::Speed];
+
     /// What a person calls it.
     pub fn name(self) -> &'static str {
         match self {
@@ -49,21 +52,22 @@ pub enum Fill {
 }
 
 impl FromBridge {
-    /// Fills what `observation` lacks, and answers what became of each item; what it has stays.
+    /// Fills what `observation` lacks of the items wanted, and answers what became of each; what it has stays.
     ///
     /// A stale figure is not taken, nor a time that [`ClockCheck::refuses`].
-    pub fn fill(&self, observation: &mut Observation, clock: Option<ClockCheck>) -> Vec<(Item, Fill)> {
-        let mut time = put(&mut observation.moment, self.time.filter(|_| !clock.is_some_and(ClockCheck::refuses)));
-        if time == Fill::Absent && self.time.is_some() {
-            time = Fill::ClockFarOff;
-        }
-        vec![
-            (Item::Time, time),
-            (Item::Position, put(&mut observation.place, self.position)),
-            (Item::GyroHeading, put(&mut observation.gyro_heading, self.gyro_heading)),
-            (Item::CompassHeading, put(&mut observation.compass_heading, self.compass_heading)),
-            (Item::Speed, put(&mut observation.speed_kn, self.speed_kn)),
-        ]
+    pub fn fill(&self, observation: &mut Observation, wanted: &[Item], clock: Option<ClockCheck>) -> Vec<(Item, Fill)> {
+        let far_off = clock.is_some_and(ClockCheck::refuses);
+        let mut one = |item: &Item| match item {
+            Item::Time => match put(&mut observation.moment, self.time.filter(|_| !far_off)) {
+                Fill::Absent if self.time.is_some() => Fill::ClockFarOff,
+                fill => fill,
+            },
+            Item::Position => put(&mut observation.place, self.position),
+            Item::GyroHeading => put(&mut observation.gyro_heading, self.gyro_heading),
+            Item::CompassHeading => put(&mut observation.compass_heading, self.compass_heading),
+            Item::Speed => put(&mut observation.speed_kn, self.speed_kn),
+        };
+        wanted.iter().map(|item| (*item, one(item))).collect()
     }
 
     /// Whether the stream has a fresh figure for an item.
