@@ -68,10 +68,7 @@ impl NmeaPage<'_> {
             .found
             .refused
             .iter()
-            .map(|(name, why, count)| match name {
-                Some(name) => format!("{name} {count} ({why})"),
-                None => format!("{count} with {}", if count == 1 { format!("a {why}").replace("a no", "no") } else { why.to_string() }),
-            })
+            .map(|(name, why, count)| format!("{} {count} ({why})", name.map_or_else(|| "sentences".to_owned(), |n| n.to_string())))
             .collect();
         let counts = self.found.counts;
         let plural = |count: u64, one: &str, many: &str| format!("{count} {}", if count == 1 { one } else { many });
@@ -107,7 +104,8 @@ impl NmeaPage<'_> {
             _ => "no valid sentence with it".to_owned(),
         };
         let refused = self.refused().map_or_else(String::new, |r| format!(" (refused: {r})"));
-        format!("no {} could be taken: {reason}{refused}; give {give}", item.name())
+        let remarks: String = self.remarks.iter().map(|r| format!(". {r}")).collect();
+        format!("no {} could be taken: {reason}{refused}; give {give}{}", item.name(), remarks.trim_end_matches('.'))
     }
 }
 

@@ -25,8 +25,8 @@ pub struct Listened {
     pub ages: Ages,
     /// Whether the data may be old.
     pub recorded: Recorded,
-    /// Whether it was left before the data ended.
-    pub cut_short: bool,
+    /// Whether the whole time went by before the data ended, or a network had given enough.
+    pub whole_wait: bool,
 }
 
 /// Pushes what the source gives, until it ends, or the time is over, or a network has given enough.
@@ -96,8 +96,8 @@ struct Ear<'a> {
 }
 
 impl Ear<'_> {
-    fn recorded(cut_short: bool) -> Listened {
-        Listened { ages: Ages::ByStream, recorded: Recorded::Yes, cut_short }
+    fn recorded(whole_wait: bool) -> Listened {
+        Listened { ages: Ages::ByStream, recorded: Recorded::Yes, whole_wait }
     }
 
     /// A file, to its end.
@@ -163,16 +163,19 @@ impl Ear<'_> {
             let left = self.wait.saturating_sub(gone);
             let heard_enough = gone >= LEAST && (self.enough)(&self.bridge.found(Ages::ByArrival { now: gone }, self.limits));
             if left.is_zero() || heard_enough {
-                break;
+                return Ok(self.live(!heard_enough));
             }
             match receive(left.min(SLICE).max(Duration::from_millis(1)), &mut chunk) {
                 Ok(Some(count)) => self.bridge.push(chunk.get(..count).unwrap_or_default(), self.start.elapsed()),
-                Ok(None) => break,
+                Ok(None) => return Ok(self.live(false)),
                 Err(why) if matches!(why.kind(), ErrorKind::WouldBlock | ErrorKind::TimedOut | ErrorKind::Interrupted) => {}
                 Err(why) => return Err(cannot(source, "read it", &why)),
             }
         }
-        Ok(Listened { ages: Ages::ByArrival { now: self.start.elapsed() }, recorded: Recorded::No, cut_short: false })
+    }
+
+    fn live(&self, whole_wait: bool) -> Listened {
+        Listened { ages: Ages::ByArrival { now: self.start.elapsed() }, recorded: Recorded::No, whole_wait }
     }
 }
 

@@ -71,10 +71,9 @@ impl NmeaArgs {
         let found = bridge.found(heard.ages, limits);
         let clock = found.clock(now()?, heard.recorded);
         let filled = found.fill(observation, wanted, clock);
-        let remarks = heard
-            .cut_short
-            .then(|| format!("It had not ended after {} seconds (--nmea-wait); what came by then counts.", wait.as_secs_f64()));
-        Ok(Some(Heard { name: source.to_string(), found, filled, clock, remarks: remarks.into_iter().collect() }))
+        let whole = format!("Listened for the whole {} seconds of --nmea-wait.", wait.as_secs_f64());
+        let remarks: Vec<String> = heard.whole_wait.then_some(whole).into_iter().collect();
+        Ok(Some(Heard { name: source.to_string(), found, filled, clock, remarks }))
     }
 }
 
@@ -104,7 +103,7 @@ pub fn with_its_words(answer: String, heard: Option<&Heard>, output: &OutputArgs
         if output.format != Format::Text {
             eprint!("{words}");
         }
-        if let Some(clock @ ClockCheck::Apart { .. }) = heard.clock {
+        if let Some(clock @ ClockCheck::Apart { .. }) = heard.clock.filter(|_| heard.filled.contains(&(Item::Time, Fill::Taken))) {
             eprintln!("Notice: {}: {clock}", heard.name);
         }
     }

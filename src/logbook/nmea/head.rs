@@ -56,8 +56,9 @@ fn of_a_gyro(s: &Sentence, named: Option<Talker>) -> Result<(), Refusal> {
     match named {
         _ if talker.is_magnetic() => Err(Refusal::TrueFromMagnetic),
         Some(named) if named == talker => Ok(()),
+        Some(_) => Err(Refusal::NotTheNamed),
         None if talker.is_gyro() => Ok(()),
-        _ => Err(Refusal::NotTheGyro),
+        None => Err(Refusal::NotTheGyro),
     }
 }
 
@@ -87,7 +88,7 @@ mod tests {
         assert_eq!(read("GPHDT,204.0,T", None), Err(Refusal::NotTheGyro));
         assert_eq!(read("HNHDT,204.0,T", None), Err(Refusal::NotTheGyro));
         assert_eq!(read("GPHDT,204.0,T", Some("gp")), gyro(204.0, false));
-        assert_eq!(read("HEHDT,204.0,T", Some("GP")), Err(Refusal::NotTheGyro));
+        assert_eq!(read("HEHDT,204.0,T", Some("GP")), Err(Refusal::NotTheNamed));
         for named in [None, Some("HC")] {
             assert_eq!(read("HCHDT,204.0,T", named), Err(Refusal::TrueFromMagnetic));
             assert_eq!(read("HCTHS,204.0,A", named), Err(Refusal::TrueFromMagnetic));

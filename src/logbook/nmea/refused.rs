@@ -26,6 +26,8 @@ pub enum Refusal {
     TrueFromMagnetic,
     /// A true heading of an instrument that is not known to be a gyro.
     NotTheGyro,
+    /// A true heading of another talker than the one named.
+    NotTheNamed,
     /// A magnetic sensor's sentence from a gyro.
     SensorOfGyro,
 }
@@ -53,7 +55,8 @@ impl fmt::Display for Refusal {
                 other => write!(f, "quality {other}: not known"),
             },
             Self::TrueFromMagnetic => write!(f, "a true heading worked out from a magnetic compass"),
-            Self::NotTheGyro => write!(f, "a true heading, not known to be a gyro's (--nmea-heading takes it as one)"),
+            Self::NotTheGyro => write!(f, "a true heading, not known to be a gyro's; --nmea-heading names its talker"),
+            Self::NotTheNamed => write!(f, "not the talker of --nmea-heading"),
             Self::SensorOfGyro => write!(f, "a magnetic sensor's heading from a gyro"),
         }
     }
