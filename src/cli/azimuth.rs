@@ -22,6 +22,8 @@ use shadowpin::sky::Body;
 #[command(after_help = "Example: the sun by gyro and by the standard compass\n  \
     shadowpin azimuth --utc 2026-06-14T06:12:00Z --lat 36-05.8S --lon 130-33.6E --body sun --gyro 319.5 --compass 316 \\\n    \
     --gyro-heading 204 --compass-heading 200.5\n\n\
+    Time, place, headings and speed from the ship's instruments:\n  \
+    shadowpin azimuth --nmea udp:10110 --body sun --gyro 319.5 --compass 316\n\n\
     Without a bearing it gives the azimuth alone. Never look at the sun without the azimuth circle's shades.")]
 pub struct Args {
     #[command(flatten)]

@@ -27,7 +27,7 @@ const TOLERANCE_DEG: f64 = 5.0;
 pub struct Args {
     #[command(flatten)]
     when_where: WhenWhere,
-    /// True course
+    /// True course; goes with --speed. With --nmea, where it is not given, the gyro heading is the course steered
     #[arg(long, value_name = "COURSE")]
     course: Option<String>,
     /// Speed in knots

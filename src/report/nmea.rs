@@ -42,8 +42,10 @@ impl NmeaPage<'_> {
         }
         self.remarks.iter().for_each(|remark| page.sentence(remark));
         self.found.doubts.iter().for_each(|doubt| page.sentence(&format!("Notice: {doubt}")));
-        if let Some(refused) = self.refused() {
-            page.sentence(&format!("Refused: {refused}."));
+        let refused = self.refused();
+        if !refused.is_empty() {
+            page.sentence("Refused:");
+            refused.iter().for_each(|part| page.sentence(&format!("  {part}")));
         }
         page.finish()
     }
@@ -62,8 +64,8 @@ impl NmeaPage<'_> {
         page.sentence(&format!("{:<20}{value:>22}   {about}", item.name()));
     }
 
-    /// What was refused and how often; `None` where nothing was.
-    fn refused(&self) -> Option<String> {
+    /// What was refused and how often.
+    fn refused(&self) -> Vec<String> {
         let mut parts: Vec<String> = self
             .found
             .refused
@@ -71,17 +73,16 @@ impl NmeaPage<'_> {
             .map(|(name, why, count)| format!("{} {count} ({why})", name.map_or_else(|| "sentences".to_owned(), |n| n.to_string())))
             .collect();
         let counts = self.found.counts;
-        let plural = |count: u64, one: &str, many: &str| format!("{count} {}", if count == 1 { one } else { many });
         if counts.cut_off > 0 {
-            parts.push(plural(counts.cut_off, "cut off", "cut off"));
+            parts.push(format!("sentences {} (cut off)", counts.cut_off));
         }
         if counts.too_long > 0 {
-            parts.push(plural(counts.too_long, "too long", "too long"));
+            parts.push(format!("sentences {} (too long)", counts.too_long));
         }
         if counts.without_sentence > 0 {
-            parts.push(plural(counts.without_sentence, "line without a sentence", "lines without a sentence"));
+            parts.push(format!("lines {} (no sentence in them)", counts.without_sentence));
         }
-        (!parts.is_empty()).then(|| parts.join("; "))
+        parts
     }
 
     /// Why an item that is needed could not be had, and what to give in its place.
@@ -103,7 +104,8 @@ impl NmeaPage<'_> {
             _ if item == Item::Time => "ZDA and RMC alone carry a date, and no valid one is in it".to_owned(),
             _ => "no valid sentence with it".to_owned(),
         };
-        let refused = self.refused().map_or_else(String::new, |r| format!(" (refused: {r})"));
+        let refused = self.refused();
+        let refused = if refused.is_empty() { String::new() } else { format!(" (refused: {})", refused.join("; ")) };
         let remarks: String = self.remarks.iter().map(|r| format!(". {r}")).collect();
         format!("no {} could be taken: {reason}{refused}; give {give}{}", item.name(), remarks.trim_end_matches('.'))
     }

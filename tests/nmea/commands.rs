@@ -83,8 +83,8 @@ fn what_cannot_be_had_is_said() {
             lost.as_bytes(),
             "no position could be taken: the last one, GPGLL, is 30.0 s old (refused: GPGLL 1 (status not A: not valid)); give --lat and --lon\n",
         ),
-        (&noise, "there is no sentence in it (refused: 1 too long)"),
-        (&noise[1..], "there is no sentence in it (refused: 1 line without a sentence)"),
+        (&noise, "there is no sentence in it (refused: sentences 1 (too long))"),
+        (&noise[1..], "there is no sentence in it (refused: lines 1 (no sentence in them))"),
         (
             b"$GPZDA,061200.00,14,06,2026,,*00\n$GPZDA,061200.00,14,06,2026,,\n",
             "(refused: sentences 1 (no checksum); sentences 1 (wrong checksum))",
