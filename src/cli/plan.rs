@@ -105,6 +105,9 @@ pub fn run(args: Args) -> Result<Exit> {
         return Ok(Exit::Clean);
     }
     let course = course.map(|c| TrueBearing::wrapping_deg(c.value)).or_else(|| steered(&ship, gyro_error, heard.as_mut()));
+    if let (Some(heard), Some(_), None) = (heard.as_mut(), course, ship.speed_kn) {
+        heard.remarks.push("No speed was given or heard: the ship is taken to lie still.".to_owned());
+    }
     if course.is_none() && args.speed.is_some() {
         return Err(Error::Usage("--speed goes with --course, or with a gyro heading that the instruments give".into()));
     }

@@ -1,4 +1,4 @@
-//! The log: its columns and their reading.
+//! The log: its columns and their reading; and what the ship's instruments say.
 
 pub mod card;
 pub mod columns;

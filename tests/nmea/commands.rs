@@ -56,6 +56,11 @@ fn a_course_by_hand_and_a_ship_without_a_gyro() {
     let text = lines(&["GPRMC,061200.00,A,3605.80,S,13033.60,E,12.3,203.6,140626,,,A"]);
     let still = run("plan --nmea - --hours 1", text.as_bytes());
     assert!(still.out.contains("Neither --course nor a gyro heading: the ship is taken to lie still.\n"), "{}", still.out);
+    let no_speed = run(
+        "plan --nmea - --course 100 --hours 1",
+        (line("GPZDA,061200.00,14,06,2026,,") + &line("GPGLL,3605.80,S,13033.60,E,,A,A")).as_bytes(),
+    );
+    assert!(no_speed.out.contains("No speed was given or heard"), "{}", no_speed.out);
     let which = run("plan --nmea - --bearing 318", text.as_bytes());
     assert!(
         which.out.contains("\nSun ") && which.out.contains("time                   2026-06-14 06:12:00   GPRMC, 0.0 s old"),

@@ -19,6 +19,7 @@
 
 mod bridge;
 mod clock;
+mod doubt;
 mod fields;
 mod fill;
 mod fix;
@@ -29,8 +30,9 @@ mod pace;
 mod refused;
 mod sentence;
 
-pub use bridge::{Ages, Bridge, Doubt, FromBridge};
+pub use bridge::{Ages, Bridge, FromBridge};
 pub use clock::{ClockCheck, Recorded};
+pub use doubt::Doubt;
 pub use fill::{Fill, Item};
 pub use latest::Found;
 pub use lines::{LONGEST_SENTENCE, LineCounts};
