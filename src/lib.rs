@@ -36,7 +36,7 @@
 //! | [`limits`] | every threshold and uncertainty, with its origin |
 //! | [`compass`] | errors, variation, deviation, the gyro |
 //! | [`plan`] | what to observe next |
-//! | [`logbook`] | the log's columns and their reading |
+//! | [`logbook`] | the log's columns and their reading; the ship's instruments |
 //! | [`review`] | what in a log needs an explanation |
 //! | [`report`] | results as rows, text and pictures |
 //! | [`book`] | the ship's own append-only record |

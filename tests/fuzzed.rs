@@ -6,6 +6,7 @@ use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::entry::{Faults, ReadAs, read_entry};
 use shadowpin::logbook::log::{LogReader, Record};
+use shadowpin::logbook::nmea::{Ages, Bridge};
 use shadowpin::time::text as time_text;
 
 /// Directions and signed errors.
@@ -83,4 +84,19 @@ pub fn limits(bytes: &[u8]) {
             assert!((setting.least..=setting.most).contains(&(setting.get)(&limits)));
         }
     }
+}
+
+/// A stream of sentences: what is found is in range, and the same wherever it is cut.
+pub fn nmea(bytes: &[u8]) {
+    let listen = |chunk: usize| {
+        let mut bridge = Bridge::new(None);
+        bytes.chunks(chunk).for_each(|c| bridge.push(c, std::time::Duration::ZERO));
+        bridge.found(Ages::ByStream, &Limits::default())
+    };
+    let found = listen(bytes.len().max(1));
+    assert!(found == listen(1) && found == listen(7));
+    assert!(found.position.is_none_or(|p| p.value.position.lat.deg().abs() <= 90.0));
+    assert!(found.gyro_heading.is_none_or(|h| (0.0..360.0).contains(&h.value.value.deg())));
+    assert!(found.compass_heading.is_none_or(|h| (0.0..360.0).contains(&h.value.value.deg())));
+    assert!(found.speed_kn.is_none_or(|v| (0.0..=100.0).contains(&v.value)));
 }

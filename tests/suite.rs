@@ -7,6 +7,7 @@ mod generator;
 mod gyro;
 mod layers;
 mod magnetic;
+mod nmea;
 mod plan;
 mod properties;
 mod published;

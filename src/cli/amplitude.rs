@@ -4,6 +4,7 @@ use super::card::CardArgs;
 use super::exit::Exit;
 use super::files::never_over_inputs;
 use super::instruments::Instruments;
+use super::nmea;
 use super::one_row;
 use super::output::{Format, OutputArgs};
 use super::when_where::{WhenWhere, option};
@@ -13,6 +14,7 @@ use shadowpin::angle::text::{ErrorSign, Letters, read_error};
 use shadowpin::compass::{HorizonKind, Observation, Target, work};
 use shadowpin::error::{Error, Result};
 use shadowpin::horizon::{Limb, RisingOrSetting, Search, ladder, limb_diameters};
+use shadowpin::logbook::nmea::Item;
 use shadowpin::report::amplitude::AmplitudePage;
 use shadowpin::sky::Body;
 
@@ -78,9 +80,7 @@ pub struct Args {
 
 /// Works the amplitude and writes the answer.
 pub fn run(args: Args) -> Result<Exit> {
-    never_over_inputs([args.card.file(), args.instruments.limits_file()], [&args.output.output])?;
-    let (moment, zone) = args.when_where.moment()?;
-    let place = args.when_where.place()?;
+    never_over_inputs([args.card.file(), args.instruments.limits_file(), args.when_where.nmea.file()], [&args.output.output])?;
     let body = option("--body", Body::from_name(&args.body))?;
     let limits = args.instruments.limits()?;
     let event = match args.event {
@@ -95,8 +95,11 @@ pub fn run(args: Args) -> Result<Exit> {
         (HorizonArg::Visible, Some(LimbArg::Lower)) => HorizonKind::Visible(Limb::Lower),
     };
     let target = Target::OnHorizon { body, event, horizon };
-    let mut observation = Observation { moment: Some(moment), place: Some(place), ..Observation::of(target) };
+    let mut observation = Observation::of(target);
+    let zone = args.when_where.fill(&mut observation)?;
     args.instruments.fill(&mut observation)?;
+    let heard = args.when_where.nmea.fill(&mut observation, &Item::ALL, &limits)?;
+    let (moment, place) = nmea::time_and_place(&observation, heard.as_ref())?;
     let worked = work(&observation, None, &limits);
     if let (None, Some(reason)) = (worked.true_azimuth, worked.no_azimuth) {
         return Err(reason.into());
@@ -138,6 +141,6 @@ pub fn run(args: Args) -> Result<Exit> {
             .text()
         }
     };
-    args.output.write(&answer)?;
+    args.output.write(&nmea::with_its_words(answer, heard.as_ref(), &args.output))?;
     Ok(Exit::Clean)
 }

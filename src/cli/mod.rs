@@ -10,6 +10,7 @@ mod in_order;
 mod instruments;
 mod interrupt;
 mod limits;
+mod nmea;
 mod one_row;
 mod output;
 mod plan;

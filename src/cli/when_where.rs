@@ -1,8 +1,9 @@
 //! Time and place from the command line.
 
+use super::nmea::NmeaArgs;
 use clap::{Args, ValueEnum};
 use shadowpin::angle::text::{read_latitude, read_longitude, read_position};
-use shadowpin::compass::Place;
+use shadowpin::compass::{Observation, Place};
 use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::time::text::{self, DateOrder};
 use shadowpin::time::{Moment, UtcInstant, Zone};
@@ -29,7 +30,7 @@ pub fn date_order(arg: Option<DateOrderArg>) -> DateOrder {
 #[derive(Debug, Args)]
 pub struct WhenWhere {
     /// Date and time of UTC, such as 2026-06-14T06:12:30Z, or `now` for this computer's clock
-    #[arg(long, value_name = "TIME", conflicts_with = "ship_time", required_unless_present = "ship_time")]
+    #[arg(long, value_name = "TIME", conflicts_with = "ship_time", required_unless_present_any = ["ship_time", "nmea"])]
     utc: Option<String>,
     /// Ship's date and time, such as "2026-06-14 15:12"; needs --zone or --utc-offset
     #[arg(long, value_name = "TIME")]
@@ -44,23 +45,32 @@ pub struct WhenWhere {
     #[arg(long, value_enum)]
     date_order: Option<DateOrderArg>,
     /// Latitude, such as -36.096, 36-05.8S or "36 05 48 S"
-    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true, required_unless_present = "position", conflicts_with = "position")]
+    #[arg(long, value_name = "LATITUDE", allow_hyphen_values = true, required_unless_present_any = ["position", "nmea"], conflicts_with = "position")]
     lat: Option<String>,
     /// Longitude, such as 130.56, 130-33.6E
-    #[arg(long, value_name = "LONGITUDE", allow_hyphen_values = true, required_unless_present = "position", conflicts_with = "position")]
+    #[arg(long, value_name = "LONGITUDE", allow_hyphen_values = true, required_unless_present_any = ["position", "nmea"], conflicts_with = "position")]
     lon: Option<String>,
     /// Latitude and longitude together, such as "36-05.8S 130-33.6E"
     #[arg(long, value_name = "POSITION", allow_hyphen_values = true)]
     position: Option<String>,
+    /// What fills in the rest.
+    #[command(flatten)]
+    pub nmea: NmeaArgs,
 }
 
 impl WhenWhere {
-    /// The moment, and the zone that ship's time is kept in, where one was given.
-    pub fn moment(&self) -> Result<(Moment, Option<Zone>)> {
-        let order = date_order(self.date_order);
+    /// Fills in the time and place that were given, and answers the zone that ship's time is kept in.
+    pub fn fill(&self, observation: &mut Observation) -> Result<Option<Zone>> {
         let zone = self.zone()?;
+        observation.moment = self.moment(zone)?;
+        observation.place = self.place()?;
+        Ok(zone)
+    }
+
+    fn moment(&self, zone: Option<Zone>) -> Result<Option<Moment>> {
+        let order = date_order(self.date_order);
         let moment = match (&self.utc, &self.ship_time) {
-            (Some(utc), _) if utc.eq_ignore_ascii_case("now") => now()?,
+            (Some(utc), _) if utc.eq_ignore_ascii_case("now") => Moment { utc: now()?, step_s: 1.0 },
             (Some(utc), _) => option("--utc", text::read_utc_ordered(utc, order))?,
             (None, Some(ship)) => {
                 let (date, clock) = option("--ship-time", text::read_date_time(ship, order))?;
@@ -71,9 +81,9 @@ impl WhenWhere {
                 })?;
                 option("--ship-time", text::moment(date, clock, zone))?
             }
-            (None, None) => return Err(Error::Usage("give --utc, or --ship-time with --zone".into())),
+            (None, None) => return Ok(None),
         };
-        Ok((moment, zone))
+        Ok(Some(moment))
     }
 
     fn zone(&self) -> Result<Option<Zone>> {
@@ -84,20 +94,21 @@ impl WhenWhere {
         }
     }
 
-    /// The place.
-    pub fn place(&self) -> Result<Place> {
+    fn place(&self) -> Result<Option<Place>> {
         let (lat, lon) = match (&self.position, &self.lat, &self.lon) {
             (Some(position), _, _) => option("--position", read_position(position))?,
             (None, Some(lat), Some(lon)) => (option("--lat", read_latitude(lat))?, option("--lon", read_longitude(lon))?),
-            _ => return Err(Error::Usage("give --lat and --lon, or --position".into())),
+            (None, None, None) => return Ok(None),
+            _ => return Err(Error::Usage("give both --lat and --lon, or --position".into())),
         };
-        Ok(Place { position: shadowpin::angle::Position { lat: lat.value, lon: lon.value }, step_deg: lat.step_deg.max(lon.step_deg) })
+        let position = shadowpin::angle::Position { lat: lat.value, lon: lon.value };
+        Ok(Some(Place { position, step_deg: lat.step_deg.max(lon.step_deg) }))
     }
 }
 
-fn now() -> Result<Moment> {
-    let utc = UtcInstant::from_unix_ms(chrono::Utc::now().timestamp_millis())?;
-    Ok(Moment { utc, step_s: 1.0 })
+/// This computer's clock.
+pub fn now() -> Result<UtcInstant> {
+    Ok(UtcInstant::from_unix_ms(chrono::Utc::now().timestamp_millis())?)
 }
 
 /// Says which option a bad value was given to.

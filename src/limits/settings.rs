@@ -161,6 +161,8 @@ settings! {
         card_months "card_months" = 24.0 "months", 1.0 to 600.0: "Age from which a deviation card is out of date"; "ISO 25862: adjustment every 2 years".
         too_regular_entries "too_regular_entries" = 20.0 "entries", 20.0 to 100000.0: "Fewest entries that too regular figures are judged by"; "our own; never under 20".
         watches_missing_share "watches_missing" = 0.33 "", 0.0 to 1.0: "Share of the watches under way without an entry from which it is said"; "our own".
+        nmea_stale_s "nmea_stale_s" = 10.0 "seconds", 0.1 to 3600.0: "Age over which time, position and speed from the ship's instruments are not taken"; "our own: 0.1 mile at 25 knots, ten words missed of one a second".
+        nmea_heading_stale_s "nmea_heading_stale_s" = 3.0 "seconds", 0.1 to 3600.0: "Age over which a heading from the ship's instruments is not taken"; "our own: a ship that turns swings half a degree a second".
     }
 
     /// Standard uncertainties (one sigma) of what goes into a figure.

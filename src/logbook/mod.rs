@@ -1,4 +1,4 @@
-//! The log: its columns and their reading.
+//! The log: its columns and their reading; and what the ship's instruments say.
 
 pub mod card;
 pub mod columns;
@@ -7,6 +7,7 @@ mod figures;
 pub mod gather;
 pub mod log;
 pub mod names;
+pub mod nmea;
 pub mod runup;
 pub mod sheet;
 pub mod swing;

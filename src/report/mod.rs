@@ -11,6 +11,7 @@ mod figure;
 pub mod fixed;
 pub mod limits;
 pub mod log_rows;
+pub mod nmea;
 pub mod plan;
 pub mod review_text;
 pub mod rows;
