@@ -6,6 +6,7 @@ mod delivered_log;
 mod files;
 mod readme;
 mod settle;
+mod workbooks;
 
 use std::io::Write;
 use std::path::{Path, PathBuf};
