@@ -12,6 +12,7 @@ pub mod fixed;
 pub mod limits;
 pub mod log_rows;
 pub mod nmea;
+pub mod page;
 pub mod plan;
 pub mod review_text;
 pub mod rows;
