@@ -153,6 +153,12 @@ impl RowsOut {
         }
     }
 
+    /// Writes a whole text and puts the file in its place.
+    pub fn whole(mut self, text: &str) -> Result<()> {
+        self.write_all(text.as_bytes()).map_err(|e| self.failed(e))?;
+        self.finish()
+    }
+
     /// The error of a write, with the place it was going to.
     pub fn failed(&self, source: io::Error) -> Error {
         match self {

@@ -1,7 +1,7 @@
 //! `shadowpin settle`: a gyro's run-up.
 
 use super::exit::Exit;
-use super::files;
+use super::files::{self, RowsOut};
 use super::instruments::read_limits;
 use super::output::{Format, OutputArgs};
 use super::read;
@@ -12,8 +12,8 @@ use shadowpin::angle::text::{read_direction, read_latitude};
 use shadowpin::compass::gyro::settle::{Settled, assess};
 use shadowpin::error::{Error, Result};
 use shadowpin::logbook::runup::read_run_up;
-use shadowpin::report::chart;
 use shadowpin::report::settle::SettlePage;
+use shadowpin::report::{chart, page};
 use std::path::PathBuf;
 
 /// A gyro's run-up: where it settles, and whether it has.
@@ -38,13 +38,16 @@ pub struct Args {
     /// Draw the run-up into this file (SVG)
     #[arg(long, value_name = "FILE")]
     chart: Option<PathBuf>,
+    /// Write a report for a person to this file: one HTML page that needs no script and fetches nothing
+    #[arg(long, value_name = "FILE")]
+    report: Option<PathBuf>,
     #[command(flatten)]
     output: OutputArgs,
 }
 
 /// Judges the run-up and writes the answer.
 pub fn run(args: Args) -> Result<Exit> {
-    files::never_over_inputs([Some(&args.run_up), args.limits.as_ref()], [&args.output.output, &args.chart])?;
+    files::never_over_inputs([Some(&args.run_up), args.limits.as_ref()], [&args.output.output, &args.chart, &args.report])?;
     let limits = read_limits(args.limits.as_deref())?;
     let true_heading = args.true_heading.as_deref().map(|h| option("--true-heading", read_direction(h))).transpose()?;
     let latitude = args.lat.as_deref().map(|l| option("--lat", read_latitude(l))).transpose()?.map(|l| l.value);
@@ -54,6 +57,9 @@ pub fn run(args: Args) -> Result<Exit> {
     let page = SettlePage { run_up: &run_up, found: &found, latitude, limits: &limits };
     if let Some(path) = &args.chart {
         std::fs::write(path, chart::run_up(&page)).map_err(|source| Error::File { path: path.clone(), source })?;
+    }
+    if let Some(path) = &args.report {
+        RowsOut::open(Some(path))?.whole(&page::settle(&page, &name))?;
     }
     args.output.write(&match args.output.format {
         Format::Text => page.text(),

@@ -1,7 +1,7 @@
 //! `shadowpin swing`
 
 use super::exit::Exit;
-use super::files;
+use super::files::{self, RowsOut};
 use super::output::{Format, OutputArgs};
 use super::read;
 use super::sheets;
@@ -17,6 +17,7 @@ use shadowpin::limits::Limits;
 use shadowpin::logbook::TableForm;
 use shadowpin::logbook::swing::{BadRow, COLUMNS, SightRow, Swing, SwingRow, read_swing};
 use shadowpin::notice::Notice;
+use shadowpin::report::page;
 use shadowpin::report::swing::{Elsewhere, Particulars, SwingReport, headings, table_of};
 use shadowpin::time::{Moment, UtcInstant};
 use std::path::PathBuf;
@@ -47,6 +48,9 @@ pub struct Args {
     /// Write the table as a deviation card to this file
     #[arg(long, value_name = "FILE")]
     card_out: Option<PathBuf>,
+    /// Write a report for a person to this file: one HTML page that needs no script and fetches nothing
+    #[arg(long, value_name = "FILE")]
+    report: Option<PathBuf>,
     /// Vessel, for the table's head
     #[arg(long, value_name = "NAME", default_value = "", hide_default_value = true)]
     vessel: String,
@@ -100,7 +104,7 @@ impl Every {
 }
 
 pub fn run(args: Args) -> Result<Exit> {
-    files::never_over_inputs([Some(&args.file), args.columns.as_ref()], [&args.output.output, &args.card_out])?;
+    files::never_over_inputs([Some(&args.file), args.columns.as_ref()], [&args.output.output, &args.card_out, &args.report])?;
     let utc = args.utc.as_deref().map(|text| read::utc("--utc", text)).transpose()?;
     let swung_at = match (&args.lat, &args.lon) {
         (Some(lat), Some(lon)) => Some(read::position(("--lat", lat), ("--lon", lon))?),
@@ -116,7 +120,7 @@ pub fn run(args: Args) -> Result<Exit> {
     let by_option = swung_at.zip(utc);
     work_out(&mut swing, by_option);
     let readings: Vec<DeviationReading> = swing.rows.iter().map(|row| row.reading).collect();
-    let curve = fit(&readings).map_err(|none| no_curve(name, none, &swing.bad_rows))?;
+    let curve = fit(&readings).map_err(|none| no_curve(name.clone(), none, &swing.bad_rows))?;
     let places = places(&swing.rows, by_option);
 
     let first = swing.rows.iter().find_map(|row| row.taken).map(|(_, utc)| utc);
@@ -143,6 +147,9 @@ pub fn run(args: Args) -> Result<Exit> {
     };
     if let Some(path) = &args.card_out {
         std::fs::write(path, report.card_csv(&particulars.date)).map_err(|source| Error::File { path: path.clone(), source })?;
+    }
+    if let Some(path) = &args.report {
+        RowsOut::open(Some(path))?.whole(&page::swing(&report, &name))?;
     }
     args.output.write(&match args.output.format {
         Format::Text => report.text(),

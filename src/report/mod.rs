@@ -13,6 +13,7 @@ pub mod glossary;
 pub mod limits;
 pub mod log_rows;
 pub mod nmea;
+pub mod page;
 pub mod plan;
 pub mod review_text;
 pub mod rows;

@@ -32,7 +32,7 @@ impl SettlePage<'_> {
     }
 
     /// `2027-03-04 08:58 UTC`.
-    fn clock(&self, minutes: f64) -> String {
+    pub(super) fn clock(&self, minutes: f64) -> String {
         self.at(minutes).map_or_else(|| format!("minute {minutes:.0}"), |utc| format!("{} UTC", to_the_minute(utc)))
     }
 
@@ -78,11 +78,7 @@ impl SettlePage<'_> {
     /// The page as text.
     pub fn text(&self) -> String {
         let mut page = Column::default();
-        let (n, minutes) = (self.run_up.readings.len(), self.last_min());
-        page.sentence(&match self.run_up.start {
-            Some(_) => format!("{} from {} over {minutes:.0} minutes", readings(n), self.clock(0.0)),
-            None => "No reading of the gyro".to_owned(),
-        });
+        page.sentence(&self.opening());
         for remark in self.remarks() {
             page.sentence(&remark);
         }
@@ -98,8 +94,17 @@ impl SettlePage<'_> {
         page.finish()
     }
 
+    /// How many readings, from when, over how long.
+    pub(super) fn opening(&self) -> String {
+        let (n, minutes) = (self.run_up.readings.len(), self.last_min());
+        match self.run_up.start {
+            Some(_) => format!("{} from {} over {minutes:.0} minutes", readings(n), self.clock(0.0)),
+            None => "No reading of the gyro".to_owned(),
+        }
+    }
+
     /// What there is to say of the rows themselves.
-    fn remarks(&self) -> Vec<String> {
+    pub(super) fn remarks(&self) -> Vec<String> {
         let mut said = Vec::new();
         if self.run_up.sorted {
             said.push("The rows stood in another order and were put in order of time.".to_owned());
@@ -157,7 +162,7 @@ impl SettlePage<'_> {
     }
 
     /// What the performance standards say of it.
-    fn standards(&self) -> Vec<String> {
+    pub(super) fn standards(&self) -> Vec<String> {
         let mut said = Vec::new();
         let verdict = |held: Held| match held.inside {
             Some(true) => "is inside",

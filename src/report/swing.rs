@@ -90,12 +90,19 @@ pub fn headings(step_deg: f64) -> impl Iterator<Item = f64> {
 }
 
 impl SwingReport<'_> {
-    fn notices(&self) -> Vec<Notice> {
+    pub(super) fn notices(&self) -> Vec<Notice> {
         let untold = self.elsewhere.as_ref().filter(|elsewhere| !elsewhere.is_told()).map(|_| Notice::LatitudeUntold);
         let mixed = self.latitudes_mixed.then_some(Notice::LatitudesMixed);
         // Mixed latitudes explain a large scatter: it is no sign of wrong readings.
         let of_curve = self.curve.notices.iter().filter(|n| !(self.latitudes_mixed && matches!(n, Notice::LargeScatter { .. })));
         of_curve.chain(&self.of_field).copied().chain(mixed).chain(untold).collect()
+    }
+
+    /// What is said of the curve at another place, where one was asked for.
+    pub(super) fn elsewhere_words(&self) -> Option<String> {
+        let mut text = String::new();
+        elsewhere_text(self.elsewhere.as_ref()?, &mut text);
+        Some(text)
     }
 
     /// For a person.

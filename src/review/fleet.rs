@@ -25,6 +25,11 @@ impl Fleet {
         &self.vessels
     }
 
+    /// Place of a vessel among them.
+    pub(super) fn index(&self, name: &str) -> Option<usize> {
+        self.by_name.get(name).copied()
+    }
+
     pub(super) fn vessel(&self, name: &str) -> Option<&Vessel> {
         self.vessels.get(*self.by_name.get(name)?)
     }

@@ -6,6 +6,8 @@ mod throughout;
 mod variation;
 mod watches;
 
+pub use watches::ship_hours;
+
 use super::learn::Logbook;
 use super::pattern::{NotEvaluated, Pattern, PatternId};
 use super::vessel::Vessel;

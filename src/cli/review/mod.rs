@@ -19,8 +19,9 @@ use shadowpin::error::{Error, Result};
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::log::LogReader;
 use shadowpin::report::log_rows::RowsAs;
+use shadowpin::report::page::ReviewPage;
 use shadowpin::report::review_text;
-use shadowpin::review::{Desk, Summary};
+use shadowpin::review::{Desk, Findings, Summary};
 use std::path::PathBuf;
 
 #[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
@@ -48,6 +49,9 @@ pub struct Args {
     /// Write the summary to this file as JSON
     #[arg(long, value_name = "FILE")]
     summary: Option<PathBuf>,
+    /// Write a report for a person to this file: one HTML page that needs no script and fetches nothing
+    #[arg(long, value_name = "FILE")]
+    report: Option<PathBuf>,
     /// Deviation cards (CSV)
     #[arg(long, value_name = "FILE")]
     card: Option<PathBuf>,
@@ -68,7 +72,10 @@ pub struct Args {
 /// Runs the review.
 pub fn run(args: Args) -> Result<Exit> {
     let inputs = args.log.files()?;
-    never_over_inputs(inputs.iter().map(Some).chain([args.card.as_ref(), args.limits.as_ref()]), [&args.output, &args.summary])?;
+    never_over_inputs(
+        inputs.iter().map(Some).chain([args.card.as_ref(), args.limits.as_ref()]),
+        [&args.output, &args.summary, &args.report],
+    )?;
     let OpenLog { mut input, form, places, notes } = args.log.open()?;
     let limits = read_limits(args.limits.as_deref())?;
     let cards = args.card.as_deref().map(|path| read::content(path).and_then(|(name, bytes)| read_cards(&name, &bytes))).transpose()?;
@@ -97,7 +104,10 @@ pub fn run(args: Args) -> Result<Exit> {
         return Err(Error::Usage("stopped while the log was read the first time: nothing was written".into()));
     }
     let mut out = RowsOut::open(args.output.as_deref())?;
-    let (tally, problems) = passes.judge(LogReader::open(input.rewound()?, &name, &form)?, &fleet, &mut out)?;
+    // Opened before the work, so that a place that cannot be written to is known before it.
+    let mut report = args.report.as_deref().map(|path| RowsOut::open(Some(path)).map(|file| (file, Findings::new(&fleet)))).transpose()?;
+    let findings = report.as_mut().map(|(_, findings)| findings);
+    let (tally, problems) = passes.judge(LogReader::open(input.rewound()?, &name, &form)?, &fleet, &mut out, findings)?;
     let summary = Summary::of(&fleet, &tally);
     if interrupt::asked() {
         let rows = summary.rows;
@@ -107,6 +117,11 @@ pub fn run(args: Args) -> Result<Exit> {
     out.finish()?;
     if let Some(path) = &args.summary {
         write_summary(path, &summary)?;
+    }
+    if let Some((file, findings)) = report {
+        let (log, summary, fleet, card_doubts) = (name.as_str(), &summary, &fleet, doubts.as_slice());
+        let (cards, card_as_given, limits) = (cards.as_ref(), args.card_as_given, &limits);
+        file.whole(&ReviewPage { log, summary, fleet, findings, cards, card_as_given, card_doubts, limits }.html())?;
     }
     if !args.quiet {
         problems.print(&name);

@@ -10,7 +10,7 @@ use shadowpin::error::Result;
 use shadowpin::logbook::entry::{Faults, ReadAs};
 use shadowpin::logbook::log::{Block, LogReader};
 use shadowpin::report::log_rows::{LogRows, RowsAs};
-use shadowpin::review::{CardWatch, Desk, Fleet, Learn, Tally};
+use shadowpin::review::{CardWatch, Desk, Findings, Fleet, Learn, Tally};
 use std::io::{Read, Write};
 use std::num::NonZeroUsize;
 
@@ -90,8 +90,14 @@ impl<'a> Passes<'a> {
         Ok((learn.finish(self.threads), watch.doubts(limits)))
     }
 
-    /// Second pass: each row judged and written.
-    pub fn judge<R: Read + Send>(&self, mut log: LogReader<R>, fleet: &Fleet, out: &mut RowsOut) -> Result<(Tally, Problems)> {
+    /// Second pass: each row judged and written, and given to `findings` where a report is asked for.
+    pub fn judge<R: Read + Send>(
+        &self,
+        mut log: LogReader<R>,
+        fleet: &Fleet,
+        out: &mut RowsOut,
+        mut findings: Option<&mut Findings>,
+    ) -> Result<(Tally, Problems)> {
         let rows = LogRows::new(self.rows_as, log.delimiter(), &log.titles, &log.header.replaced);
         let mut bytes = Vec::new();
         if self.titled {
@@ -99,7 +105,7 @@ impl<'a> Passes<'a> {
         }
         out.write_all(&bytes).map_err(|e| out.failed(e))?;
         let header = log.header.clone();
-        let with = Judging { desk: self.desk, read_as: self.read_as, fleet, rows: &rows, place: self.place };
+        let with = Judging { desk: self.desk, read_as: self.read_as, fleet, rows: &rows, place: self.place, report: findings.is_some() };
         let mut progress = Progress::new("judging", self.size, self.quiet);
         let (mut tally, mut problems) = (Tally::default(), Problems::default());
         in_order(
@@ -113,6 +119,9 @@ impl<'a> Passes<'a> {
                 progress.add(done.rows, done.bytes);
                 out.write_all(&judged.bytes).map_err(|e| out.failed(e))?;
                 judged.bytes.clear();
+                if let Some(findings) = &mut findings {
+                    judged.glimpses.feed(findings);
+                }
                 tally.merge(std::mem::take(&mut judged.tally));
                 problems.join(std::mem::take(&mut judged.problems));
                 Ok(())

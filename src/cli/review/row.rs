@@ -8,7 +8,7 @@ use shadowpin::logbook::log::{LONGEST_ROW, LogRow, MOST_CELLS};
 use shadowpin::notice::Notice;
 use shadowpin::report::log_rows::LogRows;
 use shadowpin::report::rows::RowFigures;
-use shadowpin::review::{Desk, Fleet, Tally, Verdict, judge, names};
+use shadowpin::review::{Desk, Findings, Fleet, Glimpse, Tally, Verdict, judge, names};
 use std::fmt::Write as _;
 
 /// The entry of a row that can be judged: neither blank nor without anything to reckon from.
@@ -42,6 +42,8 @@ pub struct Judged {
     pub tally: Tally,
     /// Rows that could not be used.
     pub problems: Problems,
+    /// What a report takes of them, where one is asked for.
+    pub glimpses: Glimpses,
     faults: Faults,
     joined: Joined,
 }
@@ -59,6 +61,23 @@ pub struct Judging<'a> {
     pub rows: &'a LogRows,
     /// How messages say where a row stands.
     pub place: Place<'a>,
+    /// A report is asked for.
+    pub report: bool,
+}
+
+/// What a report takes of rows that follow each other.
+#[derive(Debug, Default)]
+pub struct Glimpses {
+    judged: Vec<Glimpse>,
+    problems: Vec<(u64, String)>,
+}
+
+impl Glimpses {
+    /// Gives them to the report, in the order of rows.
+    pub fn feed(&mut self, findings: &mut Findings) {
+        self.judged.drain(..).for_each(|glimpse| findings.feed(glimpse));
+        self.problems.drain(..).for_each(|(number, why)| findings.feed_problem(number, why));
+    }
 }
 
 impl Judged {
@@ -69,6 +88,9 @@ impl Judged {
         let problem = self.faults.in_one();
         if !self.faults.is_empty() {
             self.problems.add(with.place, row, &self.faults);
+            if with.report {
+                self.glimpses.problems.push((row.number, problem.clone()));
+            }
         }
         match &entry {
             Some(entry) => self.judge(row, entry, &problem, with),
@@ -87,6 +109,9 @@ impl Judged {
         let worked = with.desk.work(entry, run);
         let verdict = judge(&worked.row(row.number), with.fleet);
         self.tally.add(&entry.vessel, &verdict);
+        if with.report {
+            self.glimpses.judged.extend(Glimpse::of(&worked.row(row.number), &verdict, with.fleet));
+        }
         if !problem.is_empty() {
             self.tally.add_fault();
         }

@@ -16,8 +16,8 @@ const MOST_GAP_H: f64 = 96.0;
 /// Fewest watches to judge by.
 const LEAST_WATCHES: f64 = 30.0;
 
-/// Hours of ship's time, by the zone of the longitude.
-fn ship_hours(fact: &Fact) -> Option<f64> {
+/// Hours of ship's time since the start of 2000, by the zone of the longitude.
+pub fn ship_hours(fact: &Fact) -> Option<f64> {
     let (_, lon) = fact.place()?;
     Some(fact.seconds()? as f64 / 3600.0 + (lon / 15.0).round())
 }
