@@ -95,7 +95,8 @@ impl WhenWhere {
     }
 }
 
-fn now() -> Result<Moment> {
+/// This computer's clock.
+pub fn now() -> Result<Moment> {
     let utc = UtcInstant::from_unix_ms(chrono::Utc::now().timestamp_millis())?;
     Ok(Moment { utc, step_s: 1.0 })
 }
