@@ -207,7 +207,7 @@ tr { break-inside: avoid; }
 th, td { border: 0.3mm solid #000; padding: 0.8mm 1.2mm; text-align: left; vertical-align: top; }
 th { font-weight: bold; }
 td.initials { width: 14mm; }
-tr.struck td.entered { text-decoration: line-through; }
+tr.struck .entered { text-decoration: line-through; }
 .seal { font-family: monospace; font-size: 10pt; }
 footer { margin-top: 3mm; break-inside: avoid; }
 .sign { margin: 9mm 0 4mm; }
@@ -262,8 +262,8 @@ impl BookLine {
                     td.entered { (self.utc) @if !self.ship_time.is_empty() { br; (self.ship_time) } }
                     td.entered { (self.position) }
                     td.entered { (self.observed) }
-                    td.entered { (joined(" / ", &[&self.gyro_heading, &self.compass_heading])) }
-                    td.entered { (joined(" / ", &[&self.gyro_bearing, &self.compass_bearing])) }
+                    td.entered { (pair(&self.gyro_heading, &self.compass_heading)) }
+                    td.entered { (pair(&self.gyro_bearing, &self.compass_bearing)) }
                     td.entered { (self.azimuth) }
                     td.entered { (self.gyro_error) }
                     td.entered { (self.compass_error) }
@@ -277,6 +277,12 @@ impl BookLine {
             }
         }
     }
+}
+
+/// The figure by gyro and that by magnetic compass in one cell: which is missing is seen.
+fn pair(gyro: &str, compass: &str) -> String {
+    let or_dash = |figure: &str| if figure.is_empty() { "-".to_owned() } else { figure.to_owned() };
+    if gyro.is_empty() && compass.is_empty() { String::new() } else { format!("{} / {}", or_dash(gyro), or_dash(compass)) }
 }
 
 /// A word before a figure, and nothing where there is none.

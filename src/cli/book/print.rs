@@ -36,7 +36,7 @@ pub fn run(args: Args) -> Result<Exit> {
     let from = args.from.as_deref().map(|text| read::utc("--from", text)).transpose()?;
     let to = args.to.as_deref().map(end_of).transpose()?;
     if let (Some(from), Some(to)) = (from, to)
-        && to < from
+        && to <= from
     {
         return Err(Error::Usage("--to is before --from".into()));
     }
