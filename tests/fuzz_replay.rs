@@ -7,13 +7,14 @@ use proptest::prelude::*;
 
 type Target = (&'static str, fn(&[u8]));
 
-const TARGETS: [Target; 6] = [
+const TARGETS: [Target; 7] = [
     ("angle", fuzzed::angle),
     ("time", fuzzed::time),
     ("position", fuzzed::position),
     ("log", fuzzed::log),
     ("card", fuzzed::card),
     ("limits", fuzzed::limits),
+    ("book", fuzzed::book),
 ];
 
 #[test]

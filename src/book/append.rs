@@ -57,7 +57,8 @@ pub fn append(path: &Path, begin: bool, draft: impl FnOnce(&Book) -> Result<Entr
     let mut found: Vec<String> = check(&Book { torn: None, ..book.clone() }).findings.iter().map(ToString::to_string).collect();
     let mut length = bytes.len();
     if let Some(torn) = book.torn {
-        found.push(set_aside(path, &mut file, &bytes, torn).map_err(failed)?);
+        // First, for nothing else will say where the bytes went.
+        found.insert(0, set_aside(path, &mut file, &bytes, torn).map_err(failed)?);
         length = torn.start;
     }
     let mut piece = Vec::new();
@@ -92,7 +93,11 @@ fn locked(path: &Path, begin: bool) -> Result<File> {
         io::ErrorKind::PermissionDenied | io::ErrorKind::ReadOnlyFilesystem => Error::Content {
             file: path.display().to_string(),
             line: 0,
-            message: format!("{source}: nothing was entered; it can be read, but not written to"),
+            message: if path.exists() {
+                format!("{source}: nothing was entered; it can be read, but not written to")
+            } else {
+                format!("{source}: nothing was entered; no book can be begun there")
+            },
         },
         _ => Error::File { path: path.to_owned(), source },
     };

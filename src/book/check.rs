@@ -6,7 +6,8 @@ use super::seal::Seal;
 use std::collections::{BTreeMap, BTreeSet};
 use std::fmt;
 
-/// Rows ahead that are asked whether the chain goes on without the row in doubt.
+/// Rows that are asked about one in doubt, at most: whether the chain goes on from them, or claim the same number. A file made to be slow
+/// is not.
 const AHEAD: usize = 200;
 
 /// Something that the seals do not bear out.
@@ -183,7 +184,10 @@ impl<'b> Chain<'b> {
     /// Whether the same entry, seal and all, stood before.
     fn is_copy(&self, at: usize, entry: &Entry) -> bool {
         let alike = entry.number.and_then(|number| self.by_number.get(&number)).into_iter().flatten();
-        alike.filter(|other| **other < at).any(|other| self.entries.get(*other).is_some_and(|o| o.seal.is_some() && o.cells == entry.cells))
+        alike
+            .take(AHEAD)
+            .filter(|other| **other < at)
+            .any(|other| self.entries.get(*other).is_some_and(|o| o.seal.is_some() && o.cells == entry.cells))
     }
 
     /// Where the entry stands that this one was sealed after, anywhere in the file.
@@ -193,7 +197,11 @@ impl<'b> Chain<'b> {
             return Some(After::Start);
         }
         let rows = self.by_number.get(&before)?;
-        rows.iter().copied().find(|row| self.entries.get(*row).and_then(|e| e.seal).is_some_and(|seal| entry.fits(&seal))).map(After::Row)
+        rows.iter()
+            .copied()
+            .take(AHEAD)
+            .find(|row| self.entries.get(*row).and_then(|e| e.seal).is_some_and(|seal| entry.fits(&seal)))
+            .map(After::Row)
     }
 
     /// A sound entry in the wrong place, or behind rows that do not belong there.

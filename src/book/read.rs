@@ -73,8 +73,12 @@ impl Book {
             let torn = (!bytes.is_empty()).then_some(Torn { start: 0, length: bytes.len() });
             return Ok(Self { torn, ..Self::empty(name) });
         }
-        let last = last_line(bytes);
         let whole = read(name, bytes)?;
+        if !whole.layout.plain {
+            // Saved by another program, which writes whole files.
+            return Ok(whole);
+        }
+        let last = last_line(bytes);
         if last.start > 0 && (last.zeros || !last.ended) {
             let before = read(name, bytes.get(..last.start).unwrap_or_default())?;
             let is_entry = whole.entries.len() > before.entries.len() && is_whole(&whole);
@@ -207,4 +211,31 @@ fn read(name: &str, bytes: &[u8]) -> Result<Book> {
         book.entries.push(Entry::of(row.record.line, cells));
     }
     Ok(book)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::book::check;
+
+    /// Saved as UTF-16 by a spreadsheet: it reads, and is sound.
+    #[test]
+    fn saved_as_utf_16() {
+        let text = include_str!("../../fixtures/books/amber_tern.csv");
+        let wide: Vec<u8> = format!("\u{feff}{}", text.replace(',', "\t")).encode_utf16().flat_map(u16::to_le_bytes).collect();
+        let book = Book::parse("book", &wide).unwrap();
+        assert!(!book.layout.plain && book.torn.is_none());
+        assert_eq!(check(&book), check(&Book::parse("book", text.as_bytes()).unwrap()));
+        assert_eq!(book.entries.len(), 5);
+    }
+
+    #[test]
+    fn no_book() {
+        let said = |text: &str| Book::parse("book", text.as_bytes()).unwrap_err().to_string();
+        assert!(said("utc,lat,lon,body\n").contains("no column entry: it is no book"));
+        let twice = header().replace(",seal", ",seal,seal");
+        assert!(said(&twice).contains("the column seal stands there twice"));
+        assert!(said("notes").contains("no column with the time"));
+        assert!(Book::parse("book", b"").unwrap().entries.is_empty());
+    }
 }

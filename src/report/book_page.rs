@@ -206,6 +206,8 @@ thead { display: table-header-group; }
 tr { break-inside: avoid; }
 th, td { border: 0.3mm solid #000; padding: 0.8mm 1.2mm; text-align: left; vertical-align: top; }
 th { font-weight: bold; }
+td.entered { white-space: nowrap; }
+td.words { white-space: normal; }
 td.initials { width: 14mm; }
 tr.struck .entered { text-decoration: line-through; }
 .seal { font-family: monospace; font-size: 10pt; }
@@ -261,7 +263,7 @@ impl BookLine {
                 @if self.kind == LineKind::Entry {
                     td.entered { (self.utc) @if !self.ship_time.is_empty() { br; (self.ship_time) } }
                     td.entered { (self.position) }
-                    td.entered { (self.observed) }
+                    td.entered.words { (self.observed) }
                     td.entered { (pair(&self.gyro_heading, &self.compass_heading)) }
                     td.entered { (pair(&self.gyro_bearing, &self.compass_bearing)) }
                     td.entered { (self.azimuth) }

@@ -88,12 +88,22 @@ impl Desk<'_> {
         }
         let compared = method == "comparison";
         if !compared {
-            self.ask(Column::GyroBearing, "Bearing by gyro", false)?;
-            let only_compass = self.blank(Column::GyroBearing);
-            self.ask(Column::CompassBearing, "Bearing by magnetic compass", only_compass)?;
+            self.bearings()?;
         }
         self.ask(Column::GyroHeading, "Heading by gyro", compared)?;
         self.ask(Column::CompassHeading, "Heading by magnetic compass", compared)
+    }
+
+    /// A bearing by gyro, by magnetic compass, or both.
+    fn bearings(&mut self) -> Result<()> {
+        loop {
+            self.ask(Column::GyroBearing, "Bearing by gyro", false)?;
+            self.ask(Column::CompassBearing, "Bearing by magnetic compass", false)?;
+            if !self.blank(Column::GyroBearing) || !self.blank(Column::CompassBearing) {
+                return Ok(());
+            }
+            self.say("  a bearing by one of them is needed; where none could be had, end here (Ctrl-D) and enter none with the reason\n")?;
+        }
     }
 
     /// Asks until the answer can be read.
@@ -158,13 +168,13 @@ mod tests {
     fn each_answer_is_read_at_once() {
         let mut cells = EntryCells::default();
         cells.set(Column::Lon, "130-33.6E");
-        let (done, said) = asked(&mut cells, "sunn\nsun\n\n2026-06-14T06:12Z\n95S\n36-05.8S\n\n\n400\n314.5\n\n\n2/O\n\n");
+        let (done, said) = asked(&mut cells, "sunn\nsun\n\n2026-06-14T06:12Z\n95S\n36-05.8S\n\n\n\n400\n314.5\n\n\n2/O\n\n");
         done.unwrap();
         assert_eq!(cells.get(Column::Body), "sun");
         assert_eq!((cells.get(Column::Lat), cells.get(Column::Lon)), ("36-05.8S", "130-33.6E"));
         assert_eq!((cells.get(Column::GyroBearing), cells.get(Column::CompassBearing)), ("", "314.5"));
         assert_eq!(cells.get(Column::Observer), "2/O");
-        for wrong in ["\"sunn\"", "\"95S\"", "\"400\""] {
+        for wrong in ["\"sunn\"", "\"95S\"", "\"400\"", "a bearing by one of them is needed"] {
             assert!(said.contains(wrong), "{said}");
         }
         assert!(!said.contains("Longitude"), "{said}");

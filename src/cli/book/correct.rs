@@ -69,7 +69,8 @@ fn over(old: &EntryCells, given: &[(Column, String)]) -> EntryCells {
     let gives = |column: Column| given.iter().any(|(c, _)| *c == column);
     let none_now = given.iter().any(|(c, text)| *c == Column::Method && text == "none");
     let mut cells = EntryCells::default();
-    for column in Column::ALL.iter().copied().filter(|c| !is_worked(*c) && !(none_now && is_observed(*c))) {
+    let left_out = |column| is_worked(column) || (none_now && is_observed(column));
+    for column in Column::ALL.iter().copied().filter(|c| !left_out(*c)) {
         cells.set(column, old.get(column));
     }
     // What says the same in another way must not stand beside what is given.

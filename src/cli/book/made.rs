@@ -9,6 +9,9 @@ use shadowpin::logbook::columns::{Column, KEPT};
 use shadowpin::report::rows::push_csv_text;
 use std::path::Path;
 
+/// Findings that are written out at an entry; the rest is counted.
+const SHOWN: usize = 3;
+
 /// Makes the entry that `draft` gives, then says what was made of it and what was found in the book.
 pub fn enter(path: &Path, begin: bool, output: &OutputArgs, draft: impl FnOnce(&Book) -> Result<(EntryCells, String)>) -> Result<Exit> {
     let mut working = String::new();
@@ -20,7 +23,10 @@ pub fn enter(path: &Path, begin: bool, output: &OutputArgs, draft: impl FnOnce(&
         Ok(cells)
     })?;
     if !output.quiet {
-        made.found.iter().for_each(|found| eprintln!("Notice: {}: {found}", path.display()));
+        made.found.iter().take(SHOWN).for_each(|found| eprintln!("Notice: {}: {found}", path.display()));
+        if made.found.len() > SHOWN {
+            eprintln!("Notice: {}: {} more; book check names them all", path.display(), made.found.len() - SHOWN);
+        }
     }
     let answer = match output.format {
         Format::Text => {
