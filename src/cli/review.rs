@@ -12,7 +12,7 @@ use shadowpin::error::{BadValue, Error, Result};
 use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::entry::{Entry, Faults, ReadAs, read_entry};
-use shadowpin::logbook::log::{LONGEST_ROW, LogReader, LogRow, MOST_CELLS, Record};
+use shadowpin::logbook::log::{LONGEST_ROW, LogReader, LogRow, MOST_CELLS, Passed, Record};
 use shadowpin::report::log_rows::{LogRows, RowsAs};
 use shadowpin::report::review_text;
 use shadowpin::report::rows::RowFigures;
@@ -91,6 +91,8 @@ struct Review<'a> {
     args: &'a Args,
     read_as: ReadAs,
     desk: Desk<'a>,
+    /// Rows of a book that are no observations, or no longer.
+    passed: Passed,
 }
 
 /// Runs the review.
@@ -99,8 +101,9 @@ pub fn run(args: Args) -> Result<Exit> {
     let mut input = Input::open(&args.log)?;
     let limits = read_limits(args.limits.as_deref())?;
     let cards = args.card.as_deref().map(|path| read::content(path).and_then(|(name, bytes)| read_cards(&name, &bytes))).transpose()?;
-    let review = Review::new(&args, &limits, cards.as_ref());
     let name = input.name.clone();
+    let passed = Passed::of(LogReader::new(input.rewound()?, &name, args.again)?)?;
+    let review = Review { passed, ..Review::new(&args, &limits, cards.as_ref()) };
     let log = LogReader::new(input.rewound()?, &name, args.again)?;
     if !args.quiet {
         log.header.hints.iter().for_each(|hint| eprintln!("{name}, line {}: {hint}", log.titles.line));
@@ -163,7 +166,7 @@ impl<'a> Review<'a> {
             SignArg::HighPlus => ErrorSign::HighPlus,
         };
         let read_as = ReadAs { decimal_comma: args.decimal_comma, date_order: date_order(args.date_order), logged_sign };
-        Self { args, read_as, desk: Desk { limits, cards, card_as_given: args.card_as_given } }
+        Self { args, read_as, desk: Desk { limits, cards, card_as_given: args.card_as_given }, passed: Passed::default() }
     }
 
     /// First pass: what each vessel's rows say together, and what they say of the cards.
@@ -177,6 +180,9 @@ impl<'a> Review<'a> {
                 let worked = self.desk.work(&entry, None);
                 cards.feed(self.desk.cards, &entry, &worked);
                 learn.feed(&worked.row(row.number));
+                if self.passed.is_late(&row) {
+                    learn.late(row.number);
+                }
             }
         }
         Ok((learn.finish(), cards.doubts(self.desk.limits)))
@@ -184,7 +190,7 @@ impl<'a> Review<'a> {
 
     /// The entry of a row that can be judged: neither blank nor without anything to reckon from.
     fn entry<'r>(&self, row: &'r LogRow<'r>, faults: &mut Faults) -> Option<Entry<'r>> {
-        if row.record.is_blank() {
+        if row.record.is_blank() || self.passed.is(row) {
             return None;
         }
         if row.record.too_long {

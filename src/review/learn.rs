@@ -11,7 +11,7 @@ use crate::compass::{GyroType, Observation, Worked, work};
 use crate::limits::Limits;
 use crate::logbook::entry::Logged;
 use crate::time::{Moment, Zone};
-use std::collections::HashMap;
+use std::collections::{BTreeSet, HashMap};
 
 /// Rows of a vessel that are looked at for a copy.
 const RECENT: usize = 64;
@@ -31,6 +31,8 @@ pub struct Learn {
     vessels: Vec<Logbook>,
     by_name: HashMap<String, usize>,
     queries: Vec<Query>,
+    /// Rows entered after their time, in the place of an earlier one.
+    late: BTreeSet<u64>,
 }
 
 /// What is kept of one vessel between the passes.
@@ -140,7 +142,12 @@ fn scattered(mut z: u64) -> u64 {
 impl Learn {
     /// Nothing learned yet.
     pub fn new(limits: Limits) -> Self {
-        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new() }
+        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new(), late: BTreeSet::new() }
+    }
+
+    /// Says that a row was entered after its time, as a correction is: its place in the file says nothing of order and track.
+    pub fn late(&mut self, number: u64) {
+        self.late.insert(number);
     }
 
     /// Learns one row.
@@ -172,7 +179,7 @@ impl Learn {
 
     /// What the rows say together.
     pub fn finish(self) -> Fleet {
-        let vessels = self.vessels.into_iter().map(|book| Vessel::of(book, &self.limits)).collect();
+        let vessels = self.vessels.into_iter().map(|book| Vessel::of(book, &self.late, &self.limits)).collect();
         Fleet::new(vessels, self.by_name, self.limits)
     }
 }

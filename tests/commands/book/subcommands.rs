@@ -129,6 +129,28 @@ fn signed_and_shown() {
 }
 
 #[test]
+fn a_review_reads_the_book_as_a_log() {
+    let place = Place::new();
+    for (minute, gyro) in ["318.5", "219", "318", "318.5"].iter().enumerate() {
+        let utc = format!("2026-06-14T06:{:02}:00Z", 10 + minute);
+        assert_eq!(
+            place.run("add", &["--utc", &utc, "--lat", "36-05.8S", "--lon", "130-33.6E", "--body", "sun", "--gyro", gyro]).code,
+            Some(0)
+        );
+    }
+    place.run("correct", &["2", "--why", "219 written for 319", "--gyro", "319"]);
+    place.run("correct", &["4", "--why", "entered twice"]);
+    place.run("sign", &["--rank", "Master"]);
+    let ran = shadowpin(&["review", place.name(), "--format", "json"], b"");
+    assert_eq!(ran.code, Some(0), "{}\n{}", ran.err, ran.out);
+    let rows: Vec<serde_json::Value> = ran.out.lines().map(|l| serde_json::from_str(l).unwrap()).collect();
+    let worked: Vec<bool> = rows.iter().map(|row| row["gyro_error"].is_f64()).collect();
+    assert_eq!(worked, [true, false, true, false, true, false, false]);
+    assert!(rows.iter().all(|row| row["problem"].is_null() && row["queries"].is_null()), "{}", ran.out);
+    assert!(ran.err.contains("3 rows, 0 with a query, 0 with a problem"), "{}", ran.err);
+}
+
+#[test]
 fn a_page_for_paper() {
     let place = Place::new();
     for (day, gyro) in [("13", "318"), ("14", "319"), ("15", "320")] {

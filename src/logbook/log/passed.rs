@@ -1,0 +1,96 @@
+//! Rows of a ship's own book that are no observations to be reviewed.
+
+use super::cells::{Cells, text_of};
+use super::reader::{LogReader, LogRow};
+use super::record::Record;
+use crate::error::Result;
+use crate::logbook::columns::{Column, KEPT};
+use std::collections::BTreeSet;
+use std::io::Read;
+
+/// Which rows of a log are passed over: where it is a book, signatures, entries that only strike another through, and entries that
+/// were struck through. In any other log, none.
+#[derive(Debug, Clone, Default)]
+pub struct Passed {
+    places: Option<Places>,
+    struck: BTreeSet<u64>,
+}
+
+/// Where a book's own columns stand.
+#[derive(Debug, Clone, Copy)]
+struct Places {
+    entry: usize,
+    corrects: usize,
+    signed: usize,
+}
+
+impl Passed {
+    /// Reads a book through, for an entry is struck through by a later one; of another log the header alone.
+    ///
+    /// # Errors
+    /// As reading the log.
+    pub fn of<R: Read>(mut log: LogReader<R>) -> Result<Self> {
+        let names: Vec<String> = log.titles.cells().map(|c| text_of(c).to_ascii_lowercase()).collect();
+        let place = |name: &str| names.iter().position(|n| n == name);
+        // All of them: a log of another kind may well have a column entry.
+        if KEPT.iter().any(|column| place(column.name).is_none()) {
+            return Ok(Self::default());
+        }
+        let (Some(entry), Some(corrects), Some(signed)) = (place("entry"), place("corrects"), place("signed")) else {
+            return Ok(Self::default());
+        };
+        let places = Places { entry, corrects, signed };
+        let mut struck = BTreeSet::new();
+        let mut record = Record::default();
+        while let Some(row) = log.next(&mut record)? {
+            struck.extend(number(row.record, places.corrects));
+        }
+        Ok(Self { places: Some(places), struck })
+    }
+
+    /// Whether the row is passed over.
+    pub fn is(&self, row: &LogRow) -> bool {
+        let Some(places) = self.places else { return false };
+        let signed = row.record.cell(places.signed).is_some_and(|cell| !text_of(cell).is_empty());
+        let blank = |column| row.text(column).is_empty();
+        let only_strikes = number(row.record, places.corrects).is_some() && blank(Column::Method) && blank(Column::Body);
+        signed || only_strikes || number(row.record, places.entry).is_some_and(|entry| self.struck.contains(&entry))
+    }
+
+    /// Whether the row stands in the place of an earlier one, so that its time belongs further up.
+    pub fn is_late(&self, row: &LogRow) -> bool {
+        self.places.is_some_and(|places| number(row.record, places.corrects).is_some())
+    }
+}
+
+/// The number of an entry.
+fn number(record: &Record, place: usize) -> Option<u64> {
+    let number: f64 = text_of(record.cell(place)?).parse().ok()?;
+    (number >= 1.0 && number.fract() == 0.0).then_some(number as u64)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn passed(log: &str) -> Vec<(bool, bool)> {
+        let open = || LogReader::new(log.as_bytes(), "log", false).unwrap();
+        let passed = Passed::of(open()).unwrap();
+        let (mut log, mut record, mut found) = (open(), Record::default(), Vec::new());
+        while let Some(row) = log.next(&mut record).unwrap() {
+            found.push((passed.is(&row), passed.is_late(&row)));
+        }
+        found
+    }
+
+    #[test]
+    fn struck_entries_strikes_and_signatures() {
+        let rows = "t,1,2,Sun,,1,,,,,s\nt,1,2,Sun,,2,,,,,s\n,,,Moon,,3,,1,why,,s\n,,,,,4,,2,why,,s\n,,,,,5,,,,Master,s\n,,,,none,6,,,,,s\n";
+        let book = format!("utc,lat,lon,body,method,entry,recorded_utc,corrects,reason,signed,seal\n{rows}");
+        let (yes, no) = (true, false);
+        assert_eq!(passed(&book), [(yes, no), (yes, no), (no, yes), (yes, yes), (yes, no), (no, no)]);
+        // Without a seal it is no book.
+        let log = format!("utc,lat,lon,body,method,entry,recorded_utc,corrects,reason,signed,seals\n{rows}");
+        assert!(passed(&log).iter().all(|found| *found == (no, no)));
+    }
+}
