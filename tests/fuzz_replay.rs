@@ -7,7 +7,7 @@ use proptest::prelude::*;
 
 type Target = (&'static str, fn(&[u8]));
 
-const TARGETS: [Target; 7] = [
+const TARGETS: [Target; 8] = [
     ("angle", fuzzed::angle),
     ("time", fuzzed::time),
     ("position", fuzzed::position),
@@ -15,6 +15,7 @@ const TARGETS: [Target; 7] = [
     ("card", fuzzed::card),
     ("limits", fuzzed::limits),
     ("nmea", fuzzed::nmea),
+    ("book", fuzzed::book),
 ];
 
 #[test]

@@ -2,6 +2,7 @@
 // Included by the fuzz workspace and by the test that replays the kept inputs.
 
 use shadowpin::angle::text::{self as angle_text, ErrorSign, Letters};
+use shadowpin::book::{self, Book};
 use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::logbook::entry::{Faults, ReadAs, read_entry};
@@ -99,4 +100,14 @@ pub fn nmea(bytes: &[u8]) {
     assert!(found.gyro_heading.is_none_or(|h| (0.0..360.0).contains(&h.value.value.deg())));
     assert!(found.compass_heading.is_none_or(|h| (0.0..360.0).contains(&h.value.value.deg())));
     assert!(found.speed_kn.is_none_or(|v| (0.0..=100.0).contains(&v.value)));
+}
+
+/// A ship's own record: whatever its bytes, a check ends, and so does its page.
+pub fn book(bytes: &[u8]) {
+    let Ok(book) = Book::parse("fuzzed", bytes) else { return };
+    let checked = book::check(&book);
+    assert!(checked.findings.len() <= 2 * book.entries.len() + 1);
+    let page = book::page(&book, book.entries.iter(), "");
+    assert!(page.text().ends_with('\n') && page.html().ends_with('\n'));
+    assert!(book.torn.is_none_or(|torn| torn.start + torn.length == bytes.len()));
 }

@@ -12,7 +12,7 @@ use crate::compass::{GyroType, Observation, Worked, work};
 use crate::limits::Limits;
 use crate::logbook::entry::Logged;
 use crate::time::{Moment, Zone};
-use std::collections::HashMap;
+use std::collections::{BTreeSet, HashMap};
 use std::num::NonZeroUsize;
 use std::sync::atomic::{AtomicUsize, Ordering};
 use std::sync::{Mutex, PoisonError};
@@ -34,6 +34,8 @@ pub struct Learn<'a> {
     vessels: Vec<Logbook>,
     by_name: HashMap<String, usize>,
     queries: Vec<Query>,
+    /// Rows entered after their time, in the place of an earlier one.
+    late: BTreeSet<u64>,
 }
 
 /// What is kept of one vessel between the passes.
@@ -149,7 +151,12 @@ fn scattered(mut z: u64) -> u64 {
 impl<'a> Learn<'a> {
     /// Nothing learned yet.
     pub fn new(limits: &'a Limits) -> Self {
-        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new() }
+        Self { limits, vessels: Vec::new(), by_name: HashMap::new(), queries: Vec::new(), late: BTreeSet::new() }
+    }
+
+    /// Says that a row was entered after its time, as a correction is: its place in the file says nothing of order and track.
+    pub fn late(&mut self, number: u64) {
+        self.late.insert(number);
     }
 
     /// Place of a vessel, made where it is new.
@@ -182,7 +189,8 @@ impl<'a> Learn<'a> {
     }
 
     /// Adds what was learned of the rows that follow.
-    pub fn join(&mut self, later: Learn) {
+    pub fn join(&mut self, mut later: Learn) {
+        self.late.append(&mut later.late);
         for book in later.vessels {
             let at = self.place_of(&book.name);
             if let Some(vessel) = self.vessels.get_mut(at) {
@@ -194,7 +202,7 @@ impl<'a> Learn<'a> {
     /// What the rows say together, worked out on that many threads; the same on any number.
     pub fn finish(self, threads: NonZeroUsize) -> Fleet {
         let mut books: Vec<Mutex<Option<Logbook>>> = self.vessels.into_iter().map(|b| Mutex::new(Some(b))).collect();
-        let limits = self.limits;
+        let (limits, late) = (self.limits, &self.late);
         let next = AtomicUsize::new(0);
         // The longest first, lest the last thread sits over it alone.
         let mut order: Vec<usize> = (0..books.len()).collect();
@@ -203,7 +211,7 @@ impl<'a> Learn<'a> {
             let mut done = Vec::new();
             while let Some(&at) = order.get(next.fetch_add(1, Ordering::Relaxed)) {
                 let book = books.get(at).and_then(|b| b.lock().unwrap_or_else(PoisonError::into_inner).take());
-                done.extend(book.map(|b| (at, Vessel::of(b, limits))));
+                done.extend(book.map(|b| (at, Vessel::of(b, late, limits))));
             }
             done
         };

@@ -2,6 +2,7 @@
 
 use super::fact::{Fact, flag};
 use crate::limits::Limits;
+use std::collections::BTreeSet;
 
 /// Rows ahead that are asked whether the track goes on without the row in doubt.
 const AHEAD: usize = 3;
@@ -14,16 +15,22 @@ pub fn miles(from: (f64, f64), to: (f64, f64)) -> f64 {
     2.0 * h.clamp(0.0, 1.0).sqrt().asin().to_degrees() * 60.0
 }
 
-/// Marks the rows whose removal restores the order of time, and those whose removal lets the track go on.
-pub fn mark(facts: &mut [Fact], limits: &Limits) {
-    mark_order(facts);
-    mark_track(facts, limits);
+/// Marks the rows whose removal restores the order of time, and those whose removal lets the track go on. Rows numbered in `late` were
+/// entered after their time for a reason that is written down: they are asked neither.
+pub fn mark(facts: &mut [Fact], late: &BTreeSet<u64>, limits: &Limits) {
+    mark_order(facts, late);
+    mark_track(facts, late, limits);
+}
+
+fn in_turn(fact: &Fact, late: &BTreeSet<u64>) -> bool {
+    late.is_empty() || !late.contains(&u64::from(fact.number))
 }
 
 /// All rows outside a longest run that never goes back in time. Where that would be most of them, the log has another order
 /// and none is marked.
-fn mark_order(facts: &mut [Fact]) {
-    let timed: Vec<(usize, i64)> = facts.iter().enumerate().filter_map(|(i, f)| Some((i, f.seconds()?))).collect();
+fn mark_order(facts: &mut [Fact], late: &BTreeSet<u64>) {
+    let timed: Vec<(usize, i64)> =
+        facts.iter().enumerate().filter(|(_, f)| in_turn(f, late)).filter_map(|(i, f)| Some((i, f.seconds()?))).collect();
     if timed.windows(2).all(|w| matches!(w, [a, b] if a.1 <= b.1)) {
         return;
     }
@@ -110,11 +117,11 @@ pub fn apart(a: &Fact, b: &Fact, limits: &Limits) -> Option<(f64, f64)> {
     Some((miles(a.place()?, b.place()?), hours * limits.thresholds.max_speed_kn + limits.thresholds.too_far_margin_nm))
 }
 
-fn mark_track(facts: &mut [Fact], limits: &Limits) {
+fn mark_track(facts: &mut [Fact], late: &BTreeSet<u64>, limits: &Limits) {
     let track: Vec<usize> = facts
         .iter()
         .enumerate()
-        .filter(|(_, f)| f.has(flag::TIME) && f.has(flag::PLACE) && !f.has(flag::OUT_OF_ORDER))
+        .filter(|(_, f)| f.has(flag::TIME) && f.has(flag::PLACE) && !f.has(flag::OUT_OF_ORDER) && in_turn(f, late))
         .map(|(i, _)| i)
         .collect();
     let far = |facts: &[Fact], a: usize, b: usize| -> bool {

@@ -14,6 +14,7 @@ use super::run::Run;
 use super::slip::{Place, Slip};
 use crate::angle::wrap_180_deg;
 use crate::limits::Limits;
+use std::collections::BTreeSet;
 
 /// Neighbours in time on each side that a gyro's slow drift is taken from.
 const DRIFT_SIDE: usize = 8;
@@ -64,9 +65,9 @@ pub struct Vessel {
 }
 
 impl Vessel {
-    /// What the rows in `book` say together.
-    pub fn of(mut book: Logbook, limits: &Limits) -> Self {
-        order::mark(&mut book.facts, limits);
+    /// What the rows in `book` say together; those numbered in `late` are not asked for their order.
+    pub fn of(mut book: Logbook, late: &BTreeSet<u64>, limits: &Limits) -> Self {
+        order::mark(&mut book.facts, late, limits);
         book.facts.shrink_to_fit();
         let runs = runs(&book);
         let curves = curves(&book, &runs);

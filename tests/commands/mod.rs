@@ -2,6 +2,7 @@
 
 mod answers;
 mod bad_logs;
+mod book;
 mod delivered_log;
 mod files;
 mod lists;

@@ -17,7 +17,7 @@ use passes::Passes;
 use problems::Place;
 use shadowpin::error::{Error, Result};
 use shadowpin::logbook::card::read_cards;
-use shadowpin::logbook::log::LogReader;
+use shadowpin::logbook::log::{LogReader, Passed};
 use shadowpin::report::log_rows::RowsAs;
 use shadowpin::report::page::ReviewPage;
 use shadowpin::report::review_text;
@@ -82,8 +82,11 @@ pub fn run(args: Args) -> Result<Exit> {
     let desk = Desk { limits: &limits, cards: cards.as_ref(), card_as_given: args.card_as_given };
     let rows_as = if args.format == RowForm::Json { RowsAs::JsonLines } else { RowsAs::Csv };
     let (name, size) = (input.name.clone(), input.size());
+    let book_of = |number| places.as_ref().map_or(0, |places| places.part_of(number));
+    let passed = Passed::of(LogReader::open(input.rewound()?, &name, &form)?, book_of)?;
     let passes = Passes {
         desk,
+        passed: &passed,
         read_as: args.log.read_as(),
         rows_as,
         titled: form.header.is_none(),

@@ -8,7 +8,7 @@ use super::problems::{Place, Problems};
 use super::row::{Judged, Judging, entry};
 use shadowpin::error::Result;
 use shadowpin::logbook::entry::{Faults, ReadAs};
-use shadowpin::logbook::log::{Block, LogReader};
+use shadowpin::logbook::log::{Block, LogReader, Passed};
 use shadowpin::report::log_rows::{LogRows, RowsAs};
 use shadowpin::review::{CardWatch, Desk, Findings, Fleet, Learn, Tally};
 use std::io::{Read, Write};
@@ -21,6 +21,8 @@ pub struct Passes<'a> {
     pub desk: Desk<'a>,
     /// How cells are understood.
     pub read_as: ReadAs,
+    /// Rows of a book that are no observations, or no longer.
+    pub passed: &'a Passed,
     /// The form of the rows.
     pub rows_as: RowsAs,
     /// The rows stand under a header.
@@ -71,10 +73,13 @@ impl<'a> Passes<'a> {
                 let mut faults = Faults::default();
                 for row in block.rows(&header) {
                     faults.clear();
-                    if let Some(entry) = entry(&row, self.read_as, &mut faults) {
+                    if let Some(entry) = entry(&row, self.read_as, self.passed, &mut faults) {
                         let worked = self.desk.work(&entry, None);
                         watch.feed(cards, &entry, &worked);
                         learn.feed(&worked.row(row.number));
+                        if self.passed.is_late(&row) {
+                            learn.late(row.number);
+                        }
                     }
                 }
             },
@@ -105,7 +110,15 @@ impl<'a> Passes<'a> {
         }
         out.write_all(&bytes).map_err(|e| out.failed(e))?;
         let header = log.header.clone();
-        let with = Judging { desk: self.desk, read_as: self.read_as, fleet, rows: &rows, place: self.place, report: findings.is_some() };
+        let with = Judging {
+            desk: self.desk,
+            read_as: self.read_as,
+            passed: self.passed,
+            fleet,
+            rows: &rows,
+            place: self.place,
+            report: findings.is_some(),
+        };
         let mut progress = Progress::new("judging", self.size, self.quiet);
         let (mut tally, mut problems) = (Tally::default(), Problems::default());
         in_order(

@@ -4,7 +4,7 @@ use super::problems::{Place, Problems};
 use shadowpin::compass::Target;
 use shadowpin::error::BadValue;
 use shadowpin::logbook::entry::{Entry, Faults, ReadAs, read_entry};
-use shadowpin::logbook::log::{LONGEST_ROW, LogRow, MOST_CELLS};
+use shadowpin::logbook::log::{LONGEST_ROW, LogRow, MOST_CELLS, Passed};
 use shadowpin::notice::Notice;
 use shadowpin::report::log_rows::LogRows;
 use shadowpin::report::rows::RowFigures;
@@ -12,8 +12,8 @@ use shadowpin::review::{Desk, Findings, Fleet, Glimpse, Tally, Verdict, judge, n
 use std::fmt::Write as _;
 
 /// The entry of a row that can be judged: neither blank nor without anything to reckon from.
-pub fn entry<'r>(row: &'r LogRow<'r>, read_as: ReadAs, faults: &mut Faults) -> Option<Entry<'r>> {
-    if row.record.is_blank() {
+pub fn entry<'r>(row: &'r LogRow<'r>, read_as: ReadAs, passed: &Passed, faults: &mut Faults) -> Option<Entry<'r>> {
+    if row.record.is_blank() || passed.is(row) {
         return None;
     }
     if row.record.too_long {
@@ -55,6 +55,8 @@ pub struct Judging<'a> {
     pub desk: Desk<'a>,
     /// How cells are understood.
     pub read_as: ReadAs,
+    /// Rows of a book that are no observations, or no longer.
+    pub passed: &'a Passed,
     /// What all rows say together.
     pub fleet: &'a Fleet,
     /// The form of the rows.
@@ -84,7 +86,7 @@ impl Judged {
     /// Judges one row and appends it.
     pub fn push(&mut self, row: &LogRow, with: &Judging) {
         self.faults.clear();
-        let entry = entry(row, with.read_as, &mut self.faults);
+        let entry = entry(row, with.read_as, with.passed, &mut self.faults);
         let problem = self.faults.in_one();
         if !self.faults.is_empty() {
             self.problems.add(with.place, row, &self.faults);

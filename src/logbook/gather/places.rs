@@ -71,6 +71,12 @@ impl Places {
         }
     }
 
+    /// Which of the logs the data row `number`, from 1, came from; 0 where it is none of theirs.
+    pub fn part_of(&self, number: u64) -> usize {
+        let at = self.runs.partition_point(|run| run.first <= number).checked_sub(1);
+        at.and_then(|at| self.runs.get(at)).map_or(0, |run| run.part as usize)
+    }
+
     /// Where the data row `number`, from 1, came from: the log, and its line or row there.
     pub fn of(&self, number: u64) -> Option<(&Part, u64)> {
         let at = self.runs.partition_point(|run| run.first <= number).checked_sub(1)?;
