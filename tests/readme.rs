@@ -18,3 +18,15 @@ fn limits_of_the_readme_are_those_of_the_table() {
         assert_eq!(listed, wanted);
     }
 }
+
+#[test]
+fn queries_of_the_readme_are_those_of_the_list() {
+    use shadowpin::report::glossary::{List, words};
+    let readme = std::fs::read_to_string(concat!(env!("CARGO_MANIFEST_DIR"), "/README.md")).unwrap();
+    let section = readme.split("## What is asked").nth(1).and_then(|rest| rest.split("\n## ").next()).unwrap();
+    let listed: Vec<&str> = section.lines().filter(|l| l.starts_with("| `")).collect();
+    let keys = |keys: &[&str]| keys.iter().map(|k| format!("`{k}`")).collect::<Vec<_>>().join(", ");
+    let queries = words().into_iter().filter(|w| w.list == List::Query);
+    let wanted: Vec<String> = queries.map(|w| format!("| `{}` | {} | {} |", w.id, w.when, keys(w.keys))).collect();
+    assert_eq!(listed, wanted);
+}

@@ -15,16 +15,18 @@ mod one_row;
 mod output;
 mod plan;
 mod progress;
+mod queries;
 mod read;
 mod review;
 mod self_check;
 mod settle;
 mod sheets;
+mod shell;
 mod swing;
 mod variation;
 mod when_where;
 
-use clap::{Parser, Subcommand};
+use clap::{CommandFactory, Parser, Subcommand};
 use exit::Exit;
 use std::process::ExitCode;
 
@@ -47,8 +49,11 @@ enum Command {
     Review(Box<review::Args>),
     Settle(settle::Args),
     Columns(columns::Args),
+    Queries(queries::Args),
     Limits(limits::Args),
     SelfCheck(self_check::Args),
+    Completions(shell::CompletionArgs),
+    Man(shell::ManArgs),
     /// A deviation curve from the deviations of a swing
     Swing(swing::Args),
     /// Variation and the earth's field at a place and date
@@ -82,6 +87,9 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Review(args) => review::run(*args),
         Command::Settle(args) => settle::run(args),
         Command::Columns(args) => columns::run(args),
+        Command::Queries(args) => queries::run(args),
+        Command::Completions(args) => shell::completions(&args, Cli::command()),
+        Command::Man(args) => shell::man(&args, Cli::command()),
         Command::Limits(args) => limits::run(args),
         Command::SelfCheck(args) => self_check::run(args),
         Command::Swing(args) => swing::run(args),

@@ -9,6 +9,7 @@ mod column;
 pub mod columns;
 mod figure;
 pub mod fixed;
+pub mod glossary;
 pub mod limits;
 pub mod log_rows;
 pub mod nmea;

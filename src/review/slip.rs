@@ -67,6 +67,39 @@ pub enum Slip {
 }
 
 impl Slip {
+    /// Every kind of slip, in the order that they are described in; another body stands for all of them.
+    pub const ALL: [Self; 29] = [
+        Self::HourAhead,
+        Self::HourBehind,
+        Self::ClockChange,
+        Self::HalfDay,
+        Self::ZoneSign,
+        Self::ShipTimeAsUtc,
+        Self::DayAhead,
+        Self::DayBehind,
+        Self::Year,
+        Self::DateSwapped,
+        Self::LatitudeName,
+        Self::LongitudeName,
+        Self::StalePosition,
+        Self::Body(Body::Sun),
+        Self::DeclinationName,
+        Self::FromOtherPole,
+        Self::OtherSide,
+        Self::Reciprocal,
+        Self::ReadBackwards,
+        Self::RelativeBearing,
+        Self::TenDegrees,
+        Self::HundredDegrees,
+        Self::DigitsSwapped,
+        Self::ColumnsSwapped,
+        Self::ErrorName,
+        Self::VariationName,
+        Self::CardByBearing,
+        Self::Arithmetic,
+        Self::Horizon,
+    ];
+
     /// The id, as it stands in the column `slip`; a body's name follows `body:`.
     pub fn id(self) -> &'static str {
         match self {

@@ -4,8 +4,10 @@ mod answers;
 mod bad_logs;
 mod delivered_log;
 mod files;
+mod lists;
 mod readme;
 mod settle;
+mod workbooks;
 
 use std::io::Write;
 use std::path::{Path, PathBuf};

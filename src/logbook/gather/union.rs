@@ -77,11 +77,7 @@ mod tests {
         let mut union = Union::default();
         let names = ColumnNames::read("names", "utc = \"GMT\"").unwrap();
         union.add(&titles("utc,Lat,lon,body,tide,tide"), &names);
-        let second = {
-            let mut renamed = ColumnNames::default();
-            std::mem::swap(&mut renamed, &mut names.clone());
-            union.add(&titles("body,utc,lat,lon,tide,read_from"), &renamed)
-        };
+        let second = union.add(&titles("body,utc,lat,lon,tide,read_from"), &names);
         assert_eq!(union.titles, ["utc", "Lat", "lon", "body", "tide", "tide", "read_from"]);
         assert_eq!(union.origin(), "read_from_2");
         let (mut row, mut cells) = (Vec::new(), ["Sun", "t", "1", "2", "high", "x", "over"].map(|c| c.as_bytes().to_vec()));
