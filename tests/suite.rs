@@ -8,6 +8,7 @@ mod gyro;
 mod layers;
 mod magnetic;
 mod nmea;
+mod pages;
 mod plan;
 mod properties;
 mod published;

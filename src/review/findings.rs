@@ -23,6 +23,8 @@ pub const MOST_POINTS: usize = 1000;
 pub const MOST_OUTLIERS: usize = 200;
 /// Errors kept of all gyros and compasses together, but never fewer of one than [`LEAST_POINTS`].
 const ALL_POINTS: usize = 60_000;
+/// Letters of a remark that are kept.
+const LONGEST_REMARK: usize = 400;
 /// See [`ALL_POINTS`].
 const LEAST_POINTS: usize = 60;
 
@@ -95,7 +97,7 @@ impl Finding {
             zone: row.zone,
             place: row.place,
             observation: row.observation.copied(),
-            remarks: row.remarks.to_owned(),
+            remarks: row.remarks.chars().take(LONGEST_REMARK).collect(),
             logged: *row.logged,
             figures: Figures {
                 azimuth: worked.true_azimuth,

@@ -102,15 +102,15 @@ pub fn run(args: Args) -> Result<Exit> {
         let line = if places.is_none() { format!(", line {}", log.titles.line) } else { String::new() };
         log.header.hints.iter().for_each(|hint| eprintln!("{name}{line}: {hint}"));
     }
+    // Opened before the work, so that a place that cannot be written to is known before it.
+    let report = args.report.as_deref().map(|path| RowsOut::open(Some(path))).transpose()?;
     let (fleet, doubts) = passes.learn(log)?;
     if interrupt::asked() {
         return Err(Error::Usage("stopped while the log was read the first time: nothing was written".into()));
     }
     let mut out = RowsOut::open(args.output.as_deref())?;
-    // Opened before the work, so that a place that cannot be written to is known before it.
-    let mut report = args.report.as_deref().map(|path| RowsOut::open(Some(path)).map(|file| (file, Findings::new(&fleet)))).transpose()?;
-    let findings = report.as_mut().map(|(_, findings)| findings);
-    let (tally, problems) = passes.judge(LogReader::open(input.rewound()?, &name, &form)?, &fleet, &mut out, findings)?;
+    let mut findings = report.is_some().then(|| Findings::new(&fleet));
+    let (tally, problems) = passes.judge(LogReader::open(input.rewound()?, &name, &form)?, &fleet, &mut out, findings.as_mut())?;
     let summary = Summary::of(&fleet, &tally);
     if interrupt::asked() {
         let rows = summary.rows;
@@ -121,7 +121,7 @@ pub fn run(args: Args) -> Result<Exit> {
     if let Some(path) = &args.summary {
         write_summary(path, &summary)?;
     }
-    if let Some((file, findings)) = report {
+    if let Some((file, findings)) = report.zip(findings) {
         let (log, summary, fleet, card_doubts) = (name.as_str(), &summary, &fleet, doubts.as_slice());
         let (cards, card_as_given, limits) = (cards.as_ref(), args.card_as_given, &limits);
         file.whole(&ReviewPage { log, summary, fleet, findings, cards, card_as_given, card_doubts, limits }.html())?;

@@ -27,7 +27,9 @@ pub struct Observed {
 pub struct Deviations {
     /// Whose compass.
     pub of: String,
-    /// Observed by a bearing.
+    /// These are the readings of a swing, and what is off was set aside.
+    pub swing: bool,
+    /// Observed by a bearing, or read of a swing.
     pub by_bearing: Vec<Observed>,
     /// Observed by comparison of headings.
     pub by_comparison: Vec<Observed>,
@@ -100,7 +102,6 @@ pub fn deviations(id: &str, of: &Deviations) -> Markup {
         }
     }
     let inside = html! {
-        path class="band" d=(bands) fill="#ddd" {}
         path class="faint" d=(hatch) stroke="#777" stroke-width="1" fill="none" {}
         path class="faint" d=(strokes(observed().map(|p| (x.at(p.heading_deg), up(p.deviation_deg - p.u_deg), up(p.deviation_deg + p.u_deg)))))
             stroke="#999" stroke-width="0.8" fill="none" {}
@@ -124,17 +125,17 @@ pub fn deviations(id: &str, of: &Deviations) -> Markup {
         x_words: "heading by compass",
         y_words: "deviation, degrees: E east, W west",
     };
-    frame.draw(&inside)
+    frame.draw(&html! { path class="band" d=(bands) fill="#ddd" {} }, &inside)
 }
 
 fn desc(of: &Deviations) -> String {
-    let mut said = format!(
-        "{} deviations by bearing, {} by comparison of headings, {} off the {}.",
-        of.by_bearing.len(),
-        of.by_comparison.len(),
-        of.off.len(),
-        if of.card.is_empty() { "curve" } else { "card" }
-    );
+    let (bearings, headings, off) = (of.by_bearing.len(), of.by_comparison.len(), of.off.len());
+    let mut said = if of.swing {
+        format!("{bearings} readings used, {off} set aside.")
+    } else {
+        let from = if of.card.is_empty() { "curve" } else { "card" };
+        format!("{bearings} deviations by bearing, {headings} by comparison of headings, {off} off the {from}.")
+    };
     let extremes = of.curve.iter().fold(None, |found: Option<(Observed, Observed)>, p| {
         Some(found.map_or((*p, *p), |(low, high)| {
             (if p.deviation_deg < low.deviation_deg { *p } else { low }, if p.deviation_deg > high.deviation_deg { *p } else { high })
@@ -153,10 +154,11 @@ fn desc(of: &Deviations) -> String {
 /// What the marks and lines of a picture stand for, as far as they are in it.
 pub fn key(of: &Deviations) -> String {
     let parts = [
-        (!of.by_bearing.is_empty(), "points: by bearing"),
+        (!of.by_bearing.is_empty(), if of.swing { "points: readings used" } else { "points: by bearing" }),
         (!of.by_comparison.is_empty(), "squares: by comparison of headings"),
         (observed_with_u(of), "upright strokes: one u either way"),
-        (!of.off.is_empty(), "crosses: off the card or curve, arrowheads where they lie beyond the picture"),
+        (!of.off.is_empty(), if of.swing { "crosses: readings set aside" } else { "crosses: off the card or curve" }),
+        (!of.off.is_empty(), "arrowheads: such beyond the picture"),
         (!of.curve.is_empty(), "line: fitted curve"),
         (of.curve.iter().any(|p| p.u_deg > 0.0), "grey band: two u of the curve"),
         (!of.card.is_empty(), "broken line and diamonds: card"),

@@ -67,14 +67,15 @@ pub fn upwards(from: f64, to: f64, height: f64) -> Scale {
 }
 
 impl Frame<'_> {
-    /// The picture with `inside` drawn in it.
-    pub fn draw(&self, inside: &Markup) -> Markup {
+    /// The picture with `inside` drawn in it, and areas that the lines of the scale stand on.
+    pub fn draw(&self, areas: &Markup, inside: &Markup) -> Markup {
         let (title, desc) = (format!("{}-title", self.id), format!("{}-desc", self.id));
         let bottom = self.height - BELOW;
         html! {
             svg viewBox=(format!("0 0 {WIDTH} {}", self.height)) role="img" aria-labelledby={ (title) " " (desc) } font-family="sans-serif" font-size="12.5" {
                 title id=(title) { (self.title) }
                 desc id=(desc) { (self.desc) }
+                (areas)
                 g class="rule" stroke="#bbb" stroke-width="0.6" fill="none" {
                     @for tick in self.y_ticks.iter().filter(|t| t.at != 0.0) {
                         path d={ "M" (one(LEFT)) "," (self.y.text(tick.at)) "H" (one(RIGHT)) } {}

@@ -88,7 +88,7 @@ pub fn gyro_errors(id: &str, of: &str, gyro: &GyroDrawn) -> Option<Markup> {
         x_words: "UTC",
         y_words: "gyro error, degrees: L low (east), H high (west)",
     };
-    Some(frame.draw(&inside))
+    Some(frame.draw(&html! {}, &inside))
 }
 
 fn steps(count: usize) -> String {

@@ -45,5 +45,5 @@ pub fn residuals(id: &str, of: &str, kept: &[Observed], set_aside: &[Observed]) 
         x_words: "heading by compass",
         y_words: "observed less curve, degrees",
     };
-    frame.draw(&inside)
+    frame.draw(&html! {}, &inside)
 }

@@ -31,19 +31,27 @@ fn drawn(page: &SettlePage, namespace: Option<&str>) -> Markup {
     let x = Scale { from: (0.0, end), to: (70.0, WIDTH - 20.0) };
     let y = Scale { from: (middle - reach, middle + reach), to: (HEIGHT - 60.0, 40.0) };
     let inside = |error: f64| error.clamp(middle - reach, middle + reach);
+    let beyond = |error: f64| (error - middle).abs() > reach;
     let curve = |from: f64, to: f64| -> String {
         let Some(swing) = &page.found.swing else { return String::new() };
         let mut path = String::new();
+        let mut pen_up = true;
         for step in 0..=CURVE_STEPS {
             let t = from + (to - from) * f64::from(step) / f64::from(CURVE_STEPS);
-            let _ = write!(path, "{}{},{} ", if step == 0 { "M" } else { "L" }, x.text(t), y.text(inside(swing.error_deg(t))));
+            let error = swing.error_deg(t);
+            // Beyond the scale there is no line, rather than one along its edge.
+            if beyond(error) {
+                pen_up = true;
+                continue;
+            }
+            let _ = write!(path, "{}{},{} ", if pen_up { "M" } else { "L" }, x.text(t), y.text(error));
+            pen_up = false;
         }
         path.truncate(path.trim_end().len());
         path
     };
     let band =
         page.found.settle_point.map(|p| (y.at(p.0 + standard::BAND_DEG), y.at(p.0 - standard::BAND_DEG) - y.at(p.0 + standard::BAND_DEG)));
-    let beyond = |error: f64| (error - middle).abs() > reach;
     html! {
         svg xmlns=[namespace] viewBox={ "0 0 " (WIDTH) " " (HEIGHT) } role="img" aria-labelledby="run-up-title run-up-desc" font-family="sans-serif" font-size="13" fill="currentColor" {
             title id="run-up-title" { "Run-up of a gyrocompass: gyro error by time" }

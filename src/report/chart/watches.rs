@@ -1,6 +1,7 @@
 //! Which watches have an entry: the watches of the day upwards, the days across.
 
-use super::frame::{Frame, LEFT, RIGHT, Tick, across, one, upwards};
+use super::Scale;
+use super::frame::{BELOW, Frame, LEFT, RIGHT, TOP, Tick, across, one};
 use crate::review::Coverage;
 use maud::{Markup, html};
 use std::fmt::Write as _;
@@ -25,10 +26,11 @@ pub fn totals(coverage: &Coverage, watch: usize) -> (u32, u32, u32) {
 /// The picture; `id` is one of a kind on the page, `of` says whose watches.
 pub fn watches(id: &str, of: &str, coverage: &Coverage) -> Markup {
     let rows = coverage.watches.len() as f64;
-    let height = 34.0 + rows * ROW + 46.0;
+    let height = TOP + rows * ROW + BELOW;
     let columns = coverage.days.len() as f64;
     let x = across(0.0, columns.max(1.0));
-    let y = upwards(rows, 0.0, height);
+    // The first watch of the day uppermost.
+    let y = Scale { from: (0.0, rows), to: (TOP, height - BELOW) };
     let width = (RIGHT - LEFT) / columns.max(1.0);
     let gap = (width * 0.12).min(2.0);
     let (mut full, mut reasoned, mut none) = (String::new(), String::new(), String::new());
@@ -95,5 +97,5 @@ pub fn watches(id: &str, of: &str, coverage: &Coverage) -> Markup {
         },
         y_words: "watch, hours of ship's time",
     };
-    frame.draw(&inside)
+    frame.draw(&html! {}, &inside)
 }

@@ -137,6 +137,7 @@ fn picture(report: &SwingReport) -> Deviations {
     };
     Deviations {
         of: if who.is_empty() { "the compass swung".to_owned() } else { who.join(", ") },
+        swing: true,
         by_bearing: observed(false),
         off: observed(true),
         curve: (0..=72).filter_map(on_curve).collect(),

@@ -166,6 +166,7 @@ fn compass_deviations(sheet: &Sheet, portrait: &Portrait, id: &str, vessel: &Ves
         })
     };
     let of = Deviations {
+        swing: false,
         of: whose(vessel, compass.compass),
         by_bearing: compass.deviations.iter().filter(|d| !d.by_comparison).map(observed).collect(),
         by_comparison: compass.deviations.iter().filter(|d| d.by_comparison).map(observed).collect(),
@@ -247,7 +248,7 @@ fn coverage(sheet: &Sheet, portrait: &Portrait, id: &str, vessel: &VesselSummary
     let caption = html! {
         "Full: an observation; open: only the reason why none could be had; a line: no entry"
         @if coverage.days_each > 1 { "; the height is the share of the days that a column stands for" }
-        ". Watches by ship's time, of the zone of the longitude. Days of which the log says nothing for more than four days together are left out. Not every watch need be under way."
+        ". Watches by ship's time, of the zone of the longitude. Days of which the log says nothing for more than four days together are left out. A ship alongside needs no entry."
     };
     let table = html! {
         table {
