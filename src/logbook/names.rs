@@ -84,7 +84,7 @@ mod tests {
         let said = |text: &str| ColumnNames::read("names.toml", text).unwrap_err().to_string();
         assert!(said("\nutcc = \"GMT\"").contains("line 2") && said("utcc = \"GMT\"").contains("is it utc?"));
         assert!(said("utc = 5").contains("in quotes"));
-        assert!(said("utc = \"GMT\"\ndate = \"gmt \"").contains("stands for two columns: utc and date"));
+        assert!(said("utc = \"GMT\"\ndate = \"gmt \"").contains("stands for two columns: date and utc"));
         assert!(said("utc =").contains("line 1"));
     }
 
