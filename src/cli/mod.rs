@@ -2,6 +2,7 @@
 
 mod amplitude;
 mod azimuth;
+mod book;
 mod card;
 mod columns;
 mod exit;
@@ -44,6 +45,7 @@ enum Command {
     Azimuth(azimuth::Args),
     Amplitude(amplitude::Args),
     Plan(plan::Args),
+    Book(book::Args),
     Review(Box<review::Args>),
     Settle(settle::Args),
     Columns(columns::Args),
@@ -79,6 +81,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Azimuth(args) => azimuth::run(args),
         Command::Amplitude(args) => amplitude::run(args),
         Command::Plan(args) => plan::run(args),
+        Command::Book(args) => book::run(args),
         Command::Review(args) => review::run(*args),
         Command::Settle(args) => settle::run(args),
         Command::Columns(args) => columns::run(args),

@@ -70,7 +70,7 @@ impl WhenWhere {
     fn moment(&self, zone: Option<Zone>) -> Result<Option<Moment>> {
         let order = date_order(self.date_order);
         let moment = match (&self.utc, &self.ship_time) {
-            (Some(utc), _) if utc.eq_ignore_ascii_case("now") => Moment { utc: now()?, step_s: 1.0 },
+            (Some(utc), _) if utc.eq_ignore_ascii_case("now") => now()?,
             (Some(utc), _) => option("--utc", text::read_utc_ordered(utc, order))?,
             (None, Some(ship)) => {
                 let (date, clock) = option("--ship-time", text::read_date_time(ship, order))?;
@@ -107,8 +107,9 @@ impl WhenWhere {
 }
 
 /// This computer's clock.
-pub fn now() -> Result<UtcInstant> {
-    Ok(UtcInstant::from_unix_ms(chrono::Utc::now().timestamp_millis())?)
+pub fn now() -> Result<Moment> {
+    let utc = UtcInstant::from_unix_ms(chrono::Utc::now().timestamp_millis())?;
+    Ok(Moment { utc, step_s: 1.0 })
 }
 
 /// Says which option a bad value was given to.

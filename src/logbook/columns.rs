@@ -131,13 +131,28 @@ pub const ADDED: [ColumnInfo; 23] = {
     ]
 };
 
+/// The columns that a book has behind the log's own, in their order.
+pub const KEPT: [ColumnInfo; 6] = {
+    const fn kept(name: &'static str, meaning: &'static str) -> ColumnInfo {
+        ColumnInfo { name, group: "kept in a book", unit: "", meaning, example: "", decimals: None }
+    }
+    [
+        kept("entry", "Number of the entry, from 1"),
+        kept("recorded_utc", "When it was entered, by the computer's clock"),
+        kept("corrects", "The entry that this one strikes through"),
+        kept("reason", "Why it was struck through"),
+        kept("signed", "Rank of whoever confirms the entries so far"),
+        kept("seal", "Seal over this entry and the seal before it"),
+    ]
+};
+
 #[cfg(test)]
 mod tests {
     use super::*;
 
     #[test]
     fn names_stand_once() {
-        let mut names: Vec<&str> = Column::ALL.iter().map(|c| c.info().name).chain(ADDED.iter().map(|c| c.name)).collect();
+        let mut names: Vec<&str> = Column::ALL.iter().map(|c| c.info().name).chain(ADDED.iter().chain(&KEPT).map(|c| c.name)).collect();
         let count = names.len();
         names.sort_unstable();
         names.dedup();

@@ -1,12 +1,16 @@
 //! The list of columns.
 
 use super::rows::push_csv_text;
-use crate::logbook::columns::{ADDED, Column, ColumnInfo};
+use crate::logbook::columns::{ADDED, Column, ColumnInfo, KEPT};
 use std::fmt::Write as _;
 
-/// Each column with whether it is read or added.
+/// Each column with whether it is read, added, or kept by a book.
 fn all() -> impl Iterator<Item = (&'static str, ColumnInfo)> {
-    Column::ALL.iter().map(|c| ("read", c.info())).chain(ADDED.into_iter().map(|c| ("added", c)))
+    Column::ALL
+        .iter()
+        .map(|c| ("read", c.info()))
+        .chain(ADDED.into_iter().map(|c| ("added", c)))
+        .chain(KEPT.into_iter().map(|c| ("kept", c)))
 }
 
 /// The meaning with the unit, where there is one.
@@ -29,6 +33,10 @@ pub fn text() -> String {
     for column in ADDED {
         let decimals = column.decimals.map(|d| format!("; {d} decimals")).unwrap_or_default();
         let _ = writeln!(text, "  {:<32}{}{decimals}", column.name, meaning(&column));
+    }
+    text.push_str("\nKept by a book behind the log's own, in this order\n");
+    for column in KEPT {
+        let _ = writeln!(text, "  {:<32}{}", column.name, column.meaning);
     }
     text
 }

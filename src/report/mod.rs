@@ -3,6 +3,8 @@
 pub mod against;
 pub mod amplitude;
 pub mod azimuth;
+pub mod book_check;
+pub mod book_page;
 pub mod card;
 pub mod chart;
 mod column;
@@ -18,4 +20,5 @@ pub mod rows;
 pub mod settle;
 pub mod swing;
 pub mod variation;
+pub mod without_body;
 mod words;

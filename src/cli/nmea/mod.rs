@@ -69,7 +69,7 @@ impl NmeaArgs {
         let enough = |found: &FromBridge| lacking.iter().all(|item| found.has_fresh(*item));
         let heard = listen(&source, wait, &mut bridge, limits, &enough)?;
         let found = bridge.found(heard.ages, limits);
-        let clock = found.clock(now()?, heard.recorded);
+        let clock = found.clock(now()?.utc, heard.recorded);
         let filled = found.fill(observation, wanted, clock);
         let whole = format!("Listened for the whole {} seconds of --nmea-wait.", wait.as_secs_f64());
         let remarks: Vec<String> = heard.whole_wait.then_some(whole).into_iter().collect();
