@@ -16,8 +16,8 @@ use tokio::sync::Semaphore;
 const CONNECTIONS: usize = 256;
 /// The head of a request must have come within this time.
 const HEAD_WITHIN: Duration = Duration::from_secs(3);
-/// A connection ends after this time, whatever it does.
-const WHOLE_WITHIN: Duration = Duration::from_secs(10);
+/// A connection ends after this time, whatever it does; a book that another program holds is waited for ten seconds.
+const WHOLE_WITHIN: Duration = Duration::from_secs(15);
 /// The largest head, bytes, and the most headers.
 const LARGEST_HEAD: usize = 16 * 1024;
 const MOST_HEADERS: usize = 64;

@@ -4,6 +4,7 @@ mod answers;
 mod bad_logs;
 mod delivered_log;
 mod files;
+mod page;
 mod readme;
 mod settle;
 

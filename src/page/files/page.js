@@ -110,11 +110,12 @@
     const lines = text.trimEnd().split("\n").map((line) => {
       // A figure ends at the forty-second place; a word about it may stand behind.
       if (line.length > 45 && line[41] !== " " && line.slice(42, 45) === "   ") {
-        const whole = make("div", line.slice(0, 42));
+        const whole = make("div", line.slice(0, 42), "figure");
         whole.append(make("span", line.slice(45), "behind"));
         return whole;
       }
-      return make("div", line, /\S {2,}\S/.test(line) ? "" : "words");
+      // A line of a table keeps its places; a sentence may go on below.
+      return make("div", line, line.match(/\S {2,}(?=\S)/g)?.length > 2 ? "" : "words");
     });
     fill(id, ...lines);
   }
@@ -208,7 +209,7 @@
         words = [`Entered in ${book} as entry ${made.entry}. Seal ${made.seal.slice(0, 17)}.`, ...made.found].join(" ");
       } else {
         session.push(typed);
-        if (session.length > 100) session.shift();
+        if (session.length > 40) session.shift();
         words = "Kept until the page is closed.";
       }
       await remember(typed);
@@ -271,7 +272,7 @@
     at("strip-words").textContent = strip.words;
     at("record-box").hidden = entries.length === 0;
     const where = book ? `The book is ${book}.` : "No book was given when the page was started: what is kept here goes when it is closed.";
-    at("record-about").textContent = entries.length ? where : `${where} There is no entry yet.`;
+    at("record-about").textContent = entries.length ? `${where} East (low) is up, broken lines are the limits, the newest is on the right.` : `${where} There is no entry yet.`;
     fill("record", ...entries.toReversed().map((entry) => {
       const parts = [
         entry.gyro_error && `gyro error ${entry.gyro_error}`,
