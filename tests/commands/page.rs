@@ -373,7 +373,7 @@ fn entries_go_to_the_book() {
     );
     assert!(answer["worked"]["card"][0].as_str().unwrap().starts_with("Card: deviation"), "{answer}");
     // Struck through by another program meanwhile.
-    let struck = shadowpin(&["book", "correct", book_name, "4", "--why", "misread", "--strike"], b"");
+    let struck = shadowpin(&["book", "correct", book_name, "4", "--why", "misread"], b"");
     assert_eq!(struck.code, Some(0), "{}", struck.err);
     assert_eq!(record(&page, &cells)["record"]["entries"].as_array().unwrap().len(), 3);
 
@@ -412,4 +412,38 @@ fn what_cannot_be_served() {
     let port = page.host.split_once(':').unwrap().1;
     let ran = shadowpin(&["page", "--port", port], b"");
     assert!(ran.code == Some(2) && ran.err.contains("127.0.0.1"), "{}", ran.err);
+}
+
+/// What the instruments say is there as they say it, marked where it must not be taken, and old when they fall silent.
+#[test]
+fn instruments_are_heard_live() {
+    // Free a moment ago; where another program was quicker, the page says so and the test fails.
+    let port = std::net::UdpSocket::bind("127.0.0.1:0").unwrap().local_addr().unwrap().port();
+    let page = Page::start(&["--nmea", &format!("udp:{port}")]);
+    assert_eq!(page.get("nmea").json()["items"], json!([]));
+    let sender = std::net::UdpSocket::bind("127.0.0.1:0").unwrap();
+    let sentence = |body: &str| format!("${body}*{:02X}\r\n", body.bytes().fold(0, |sum, byte| sum ^ byte));
+    let said =
+        sentence("HEHDT,204.0,T") + &sentence("GPZDA,201530.00,04,07,2002,00,00") + &sentence("GPGLL,3605.812,S,13033.600,E,061204,A,A");
+    let until = |done: &dyn Fn(&Value) -> bool, send: bool| -> Value {
+        let start = Instant::now();
+        loop {
+            if send {
+                sender.send_to(said.as_bytes(), ("127.0.0.1", port)).unwrap();
+            }
+            let heard = page.get("nmea").json();
+            if done(&heard) {
+                return heard;
+            }
+            assert!(start.elapsed() < Duration::from_secs(60), "{heard}");
+            std::thread::sleep(Duration::from_millis(50));
+        }
+    };
+    let heard = until(&|heard| heard["items"].as_array().unwrap().len() == 4, true);
+    let item = |heard: &Value, field: &str| heard["items"].as_array().unwrap().iter().find(|i| i["field"] == field).unwrap().clone();
+    assert_eq!((&item(&heard, "gyro_heading")["text"], &item(&heard, "gyro_heading")["why_not"]), (&json!("204.0"), &Value::Null));
+    assert_eq!((&item(&heard, "lat")["text"], &item(&heard, "lon")["text"]), (&json!("36-05.812S"), &json!("130-33.600E")));
+    assert!(item(&heard, "utc")["why_not"].as_str().unwrap().contains("give the time by hand"), "{heard}");
+    // Nothing more is said, and after three seconds a heading is of no use.
+    until(&|heard| item(heard, "gyro_heading")["why_not"].as_str().is_some_and(|why| why.starts_with("too old")), false);
 }

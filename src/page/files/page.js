@@ -187,7 +187,10 @@
       const answer = await ask("answer", { cells: typed, session });
       trouble();
       // A later question has overtaken this one.
-      if (asked === asks) show(answer, typed, loud);
+      if (asked !== asks) return;
+      show(answer, typed, loud);
+      // Typed on meanwhile: what is shown, and could be added, is not what stands in the form.
+      if (JSON.stringify(cells()) !== JSON.stringify(typed)) old();
     } catch (why) {
       trouble("It could not be worked", why);
     }
