@@ -39,6 +39,7 @@
 //! | [`logbook`] | the log's columns and their reading; the ship's instruments |
 //! | [`review`] | what in a log needs an explanation |
 //! | [`report`] | results as rows, text and pictures |
+//! | [`watch`] | one observation at the bridge, with its neighbours: JSON in, JSON out |
 //! | [`book`] | the ship's own append-only record |
 #![forbid(unsafe_code)]
 #![warn(missing_docs)]
@@ -56,3 +57,4 @@ pub mod report;
 pub mod review;
 pub mod sky;
 pub mod time;
+pub mod watch;

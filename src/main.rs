@@ -2,6 +2,7 @@
 #![forbid(unsafe_code)]
 
 mod cli;
+mod page;
 
 fn main() -> std::process::ExitCode {
     cli::main()

@@ -3,8 +3,8 @@
 use std::path::{Path, PathBuf};
 
 /// From the top down; the same list as in the crate's documentation.
-const LAYERS: [&str; 13] =
-    ["error", "notice", "angle", "time", "sky", "horizon", "limits", "compass", "plan", "logbook", "review", "report", "book"];
+const LAYERS: [&str; 14] =
+    ["error", "notice", "angle", "time", "sky", "horizon", "limits", "compass", "plan", "logbook", "review", "report", "watch", "book"];
 
 fn rust_files(folder: &Path, found: &mut Vec<PathBuf>) {
     for entry in std::fs::read_dir(folder).unwrap() {

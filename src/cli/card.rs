@@ -9,7 +9,7 @@ use shadowpin::limits::Limits;
 use shadowpin::logbook::card::read_cards;
 use shadowpin::report::card::OnCard;
 use shadowpin::time::UtcInstant;
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 
 /// The card to compare with.
 #[derive(Debug, Args)]
@@ -31,8 +31,7 @@ impl CardArgs {
     /// The card's deviation on the heading observed; `None` where no card was given.
     pub fn on(&self, observation: &Observation, utc: UtcInstant, limits: &Limits) -> Result<Option<OnCard>> {
         let (Some(path), Some(heading)) = (&self.card, observation.compass_heading) else { return Ok(None) };
-        let (name, bytes) = read::content(path)?;
-        let cards = read_cards(&name, &bytes)?;
+        let (name, cards) = read_cards_of(path)?;
         let card = only_one_in_force(&cards, utc).map_err(|message| Error::Content { file: name, line: 0, message })?;
         let as_given = self.card_as_given || card.curve().is_none();
         let deviation = if as_given { card.as_given(heading.value) } else { card.deviation(heading.value) };
@@ -43,6 +42,13 @@ impl CardArgs {
             notices: card.notices(Some(utc), limits.thresholds.card_months.round() as u32),
         }))
     }
+}
+
+/// The cards of a file, with the name that messages give it.
+pub fn read_cards_of(path: &Path) -> Result<(String, Cards)> {
+    let (name, bytes) = read::content(path)?;
+    let cards = read_cards(&name, &bytes)?;
+    Ok((name, cards))
 }
 
 /// The card of the one compass that the file is about: a single observation does not say which it means.

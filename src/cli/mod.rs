@@ -14,6 +14,7 @@ mod limits;
 mod nmea;
 mod one_row;
 mod output;
+mod page;
 mod plan;
 mod progress;
 mod queries;
@@ -48,6 +49,7 @@ enum Command {
     Amplitude(amplitude::Args),
     Plan(plan::Args),
     Book(book::Args),
+    Page(Box<page::Args>),
     Review(Box<review::Args>),
     Settle(settle::Args),
     Columns(columns::Args),
@@ -87,6 +89,7 @@ fn run(command: Command) -> shadowpin::error::Result<Exit> {
         Command::Amplitude(args) => amplitude::run(args),
         Command::Plan(args) => plan::run(args),
         Command::Book(args) => book::run(args),
+        Command::Page(args) => page::run(*args),
         Command::Review(args) => review::run(*args),
         Command::Settle(args) => settle::run(args),
         Command::Columns(args) => columns::run(args),

@@ -6,6 +6,7 @@ mod book;
 mod delivered_log;
 mod files;
 mod lists;
+mod page;
 mod readme;
 mod settle;
 mod workbooks;

@@ -68,13 +68,13 @@ pub fn listen(
     }
 }
 
-fn cannot(source: &Source, what: &str, why: &io::Error) -> Error {
+pub(super) fn cannot(source: &Source, what: &str, why: &io::Error) -> Error {
     let hint = if why.kind() == ErrorKind::AddrInUse { "; does another program listen there?" } else { "" };
     Error::Content { file: source.to_string(), line: 0, message: format!("cannot {what}: {why}{hint}") }
 }
 
 /// Tries each address of the host.
-fn connect(source: &Source, address: &str, wait: Duration) -> Result<TcpStream> {
+pub(super) fn connect(source: &Source, address: &str, wait: Duration) -> Result<TcpStream> {
     let start = Instant::now();
     let mut failed = io::Error::new(ErrorKind::NotFound, "the host has no address");
     for at in address.to_socket_addrs().map_err(|e| cannot(source, "find the host", &e))? {

@@ -1,12 +1,14 @@
 //! Time, position, heading and speed from the ship's instruments (NMEA 0183). Nothing is ever sent.
 
 mod listen;
+mod live;
 mod source;
 
 use super::output::{Format, OutputArgs};
 use super::when_where::{now, option};
 use clap::Args;
 use listen::listen;
+pub use live::Live;
 use shadowpin::angle::text::read_number;
 use shadowpin::compass::{Observation, Place};
 use shadowpin::error::{BadValue, Error, Result};
