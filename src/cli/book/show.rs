@@ -56,7 +56,8 @@ fn first_of(book: &Book, watches: u32) -> usize {
         Some((at.unix_ms() - i64::from(zone.description_minutes()) * 60_000).div_euclid(WATCH_MS))
     };
     let kept: BTreeSet<i64> = book.entries.iter().filter_map(watch).collect();
-    let Some(first) = kept.iter().rev().take(watches as usize).last() else { return 0 };
+    let skipped = kept.len().saturating_sub(watches as usize);
+    let Some(first) = kept.iter().nth(skipped) else { return 0 };
     // A correction of an older entry stands among the last, and is shown with them.
     book.entries.iter().position(|entry| watch(entry).is_some_and(|w| w >= *first)).unwrap_or(0)
 }
