@@ -5,7 +5,7 @@ mod endpoints;
 mod guard;
 mod record;
 mod reply;
-mod server;
+pub mod server;
 
 pub use desk::{Desk, Heard};
 pub use record::Record;

@@ -9,7 +9,8 @@ use std::convert::Infallible;
 use std::io;
 use std::sync::Arc;
 use std::time::Duration;
-use tokio::net::{TcpListener, TcpStream};
+use tokio::io::{AsyncRead, AsyncWrite};
+use tokio::net::TcpListener;
 use tokio::sync::Semaphore;
 
 /// Connections answered at a time; the next ones wait.
@@ -55,7 +56,7 @@ async fn accept(listener: std::net::TcpListener, desk: Arc<Desk>) -> io::Result<
 }
 
 /// One request and its answer. What goes wrong on the way is the other end's; a head that cannot be read is answered with 400.
-async fn connection(stream: TcpStream, desk: Arc<Desk>) {
+pub async fn connection(stream: impl AsyncRead + AsyncWrite + Unpin, desk: Arc<Desk>) {
     let service = service_fn(|request| {
         let desk = Arc::clone(&desk);
         async move { Ok::<_, Infallible>(endpoints::answer(request, desk).await) }

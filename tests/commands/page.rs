@@ -447,3 +447,30 @@ fn instruments_are_heard_live() {
     // Nothing more is said, and after three seconds a heading is of no use.
     until(&|heard| item(heard, "gyro_heading")["why_not"].as_str().is_some_and(|why| why.starts_with("too old")), false);
 }
+
+/// What fuzzing has kept, sent for real: each is answered or let go, and the page goes on.
+#[test]
+fn kept_inputs() {
+    let page = Page::start(&[]);
+    let kept = Path::new(env!("CARGO_MANIFEST_DIR")).join("fuzz/corpus/request");
+    let mut seen = 0;
+    for entry in std::fs::read_dir(kept).unwrap() {
+        let bytes = std::fs::read(entry.unwrap().path()).unwrap();
+        // Under the name and the token of this page.
+        let text = String::from_utf8_lossy(&bytes).replace("127.0.0.1:8080", &page.host).replace(&"0".repeat(32), &page.token);
+        let mut stream = TcpStream::connect(&page.host).unwrap();
+        let _ = stream.write_all(text.as_bytes());
+        let _ = stream.shutdown(Shutdown::Write);
+        let mut answer = Vec::new();
+        let _ = stream.read_to_end(&mut answer);
+        assert!(answer.is_empty() || answer.starts_with(b"HTTP/1.1 "), "{text}");
+        assert!(!answer.starts_with(b"HTTP/1.1 5"), "{text}");
+        seen += 1;
+    }
+    assert!(seen >= 4);
+    let mut stream = TcpStream::connect(&page.host).unwrap();
+    write!(stream, "GET /{}/ HTTP/1.1\r\nHost: {}\r\n\r\n", page.token, page.host).unwrap();
+    let mut answer = String::new();
+    stream.read_to_string(&mut answer).unwrap();
+    assert!(answer.starts_with("HTTP/1.1 200 "));
+}
