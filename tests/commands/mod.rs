@@ -7,6 +7,7 @@ mod delivered_log;
 mod files;
 mod lists;
 mod page;
+mod pictures;
 mod readme;
 mod settle;
 mod workbooks;
